@@ -1,0 +1,1 @@
+"""From a study to a proven answer: plant, market, dispatch, outcome, explore, results."""

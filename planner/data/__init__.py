@@ -1,0 +1,1 @@
+"""Published values, one cited fact a row."""

@@ -1,0 +1,1 @@
+"""The cheapest year and its proof: model, solve, bounds, verification."""

@@ -1,0 +1,1 @@
+"""Tariffs to hourly prices, metered flows to a bill."""

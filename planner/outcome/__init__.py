@@ -1,0 +1,1 @@
+"""What a schedule means: money, carbon, NOx, efficiency, security."""

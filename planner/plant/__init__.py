@@ -1,0 +1,1 @@
+"""Machines and recovered heat, hour by hour."""

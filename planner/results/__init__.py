@@ -1,0 +1,1 @@
+"""The answer and its folder: what every report is made from."""

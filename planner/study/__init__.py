@@ -1,0 +1,1 @@
+"""The study file: sections, reading, defaults, starters."""

@@ -1,0 +1,1 @@
+"""One figure a module, vector, one palette."""
