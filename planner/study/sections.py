@@ -21,7 +21,7 @@ ALL_WEEKDAYS: tuple[Weekday, ...] = ("mon", "tue", "wed", "thu", "fri", "sat", "
 class Section(BaseModel):
     """A strict record: unknown keys and wrong types are faults."""
 
-    model_config = ConfigDict(extra="forbid", frozen=True, strict=True)
+    model_config = ConfigDict(extra="forbid", frozen=True, strict=True, allow_inf_nan=False)
 
 
 class Site(Section):
