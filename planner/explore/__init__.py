@@ -1,1 +1,1 @@
-"""The answer under changed inputs."""
+"""The answer under changed inputs: what changes (`changes`), and where it stops paying."""
