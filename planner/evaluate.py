@@ -109,6 +109,27 @@ def evaluate(
     return Case(option, plant, year_prices, schedule, flows, yearly)
 
 
+def report_case(study: Study, site_year: SiteYear, number: int | None) -> Case:
+    """Work out one option as stated, with everything that a report prints.
+
+    Parameters
+    ----------
+    study : Study
+        As stated.
+    site_year : SiteYear
+        As metered.
+    number : int or None
+        Which option; None for separate supply.
+
+    Returns
+    -------
+    Case
+        The year, verified.
+    """
+    option = None if number is None else study.option[number]
+    return evaluate(study, site_year, option, for_report=True)
+
+
 def money(study: Study, separate: Case, case: Case) -> Economics:
     """What an option earns against separate supply.
 
