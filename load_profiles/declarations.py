@@ -16,9 +16,7 @@ Efficiency = Annotated[float, Field(gt=0.2, le=1.1)]
 class Declaration(BaseModel):
     """A strict record: unknown keys and wrong types are faults."""
 
-    model_config = ConfigDict(
-        extra="forbid", frozen=True, strict=True, allow_inf_nan=False
-    )
+    model_config = ConfigDict(extra="forbid", frozen=True, strict=True, allow_inf_nan=False)
 
 
 class Layout(Declaration):
