@@ -2,7 +2,10 @@
 
 from pathlib import Path
 
-from load_profiles import CARRIERS, Finding, SiteYear, read_site_year
+from load_profiles import CARRIERS, Finding, ProfileError, SiteYear, read_site_year
+from planner.errors import StudyError
+from planner.market import check_tariff
+from planner.outcome.checks import outcome_faults
 from planner.plant import GasFuel, build_plant
 from planner.study.reading import StudyFile, load_study
 
@@ -25,9 +28,7 @@ def check_study(path: Path) -> str:
     Raises
     ------
     StudyError
-        With all faults of the study.
-    ProfileError
-        With all faults of the raw files.
+        With all faults of the study and of its raw files.
     """
     source = load_study(path)
     study = source.study
@@ -53,7 +54,7 @@ def check_study(path: Path) -> str:
 
 
 def read_year(source: StudyFile) -> SiteYear:
-    """Read the raw files that a study names.
+    """Hold a study against its contracts' rules and read the raw files that it names.
 
     Parameters
     ----------
@@ -67,18 +68,25 @@ def read_year(source: StudyFile) -> SiteYear:
 
     Raises
     ------
-    ProfileError
-        With all faults of the raw files.
+    StudyError
+        With all faults of tariffs, regimes and raw files together.
     """
     study = source.study
-    return read_site_year(
-        study.demand,
-        study.weather,
-        folder=source.folder,
-        year=study.site.year,
-        time_zone=study.site.time_zone,
-        altitude_m=study.site.altitude_m,
-    )
+    faults = (*check_tariff(study.power_tariff), *outcome_faults(study))
+    try:
+        site_year = read_site_year(
+            study.demand,
+            study.weather,
+            folder=source.folder,
+            year=study.site.year,
+            time_zone=study.site.time_zone,
+            altitude_m=study.site.altitude_m,
+        )
+    except ProfileError as error:
+        raise StudyError((*faults, *error.faults)) from None
+    if faults:
+        raise StudyError(faults)
+    return site_year
 
 
 def _wanted(site_year: SiteYear) -> list[str]:

@@ -93,11 +93,22 @@ def demo(into: Path, site: str | None, processes: int | None) -> None:
 
 def main() -> None:
     """Run the command and leave with a documented exit code."""
-    sys.exit(_code_of(sys.argv[1:]))
+    sys.exit(run(sys.argv[1:]))
 
 
-def _code_of(arguments: list[str]) -> int:
-    """Run one command line; say what went wrong on the error stream."""
+def run(arguments: list[str]) -> int:
+    """Run one command line; say what went wrong on the error stream.
+
+    Parameters
+    ----------
+    arguments : list of str
+        As typed, without the command's own name.
+
+    Returns
+    -------
+    int
+        Exit code.
+    """
     try:
         cli(arguments, prog_name="flueprint", standalone_mode=False)
     except (KeyboardInterrupt, click.Abort):

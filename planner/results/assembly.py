@@ -10,6 +10,7 @@ import pandas as pd
 from load_profiles import Finding, SiteYear
 from planner.evaluate import Case
 from planner.explore.sweep import Exploration
+from planner.market import tariff_findings
 from planner.outcome.energy import energy_year, month_flows
 from planner.plant import GasFuel
 from planner.results import site_records
@@ -23,6 +24,7 @@ from planner.results.records import (
     Verdict,
 )
 from planner.study.reading import StudyFile
+from planner.study.study import Study
 
 #: The rule by which one option is advised, in the words of the report.
 RULE = "the option with the highest net present value, if that is above zero"
@@ -61,7 +63,14 @@ def assemble(
     outcomes, hourly = [], {"separate": separate.hourly.assign(nox_g_per_s=0.0)}
     for key, case, money, exploration in zip(keys, cases, earned, explorations, strict=True):
         outcome, frame = option_outcome(
-            study, site_year, fuel, separate, case, money, exploration, key=key
+            study,
+            site_year,
+            fuel,
+            separate=separate,
+            case=case,
+            earned=money,
+            exploration=exploration,
+            key=key,
         )
         outcomes.append(outcome)
         hourly[key] = frame
@@ -72,7 +81,7 @@ def assemble(
         heading=site_records.heading(study),
         inputs=site_records.input_files(source),
         defaults=site_records.defaults(study),
-        findings=_findings(site_year, separate, cases, outcomes),
+        findings=_findings(study, site_year, (separate, *cases), outcomes),
         demand=site_records.demand(site_year),
         tariffs=site_records.tariffs(study, separate.prices, fuel),
         separate_supply=SeparateOutcome(
@@ -134,14 +143,15 @@ def _verdict(outcomes: Sequence[OptionOutcome]) -> Verdict:
 
 
 def _findings(
+    study: Study,
     site_year: SiteYear,
-    separate: Case,
-    cases: Sequence[Case],
+    all_cases: Sequence[Case],
     outcomes: Sequence[OptionOutcome],
 ) -> list[FindingRecord]:
     """Findings of every stage, each once."""
     staged: list[tuple[str, Finding]] = [("profiles", f) for f in site_year.findings]
-    for case in (separate, *cases):
+    staged += [("market", f) for f in tariff_findings(study.power_tariff, site_year.step_h)]
+    for case in all_cases:
         staged += [("plant", finding) for finding in case.plant.findings]
     staged += [("explore", finding) for finding in _failed_variants(outcomes)]
     once = dict.fromkeys(staged)
