@@ -98,7 +98,7 @@ def _import_per_kWh(tariff: PowerTariff, local_time: pd.DatetimeIndex) -> FloatA
     by_calendar = sum(
         (calendar_of(charge) * charge.price_per_kWh for charge in tariff.energy), start=np.zeros(())
     )
-    by_step = by_calendar[local_time.month - 1, local_time.weekday, local_time.hour]
+    by_step = by_calendar[local_time.month - 1, local_time.day_of_week, local_time.hour]
     return np.asarray(by_step + tariff.levy_per_kWh)
 
 

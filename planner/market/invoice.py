@@ -178,7 +178,7 @@ def _local_calendar(site_year: SiteYear) -> pd.DataFrame:
     return pd.DataFrame(
         {
             "month": local.month,
-            "weekday": [WEEKDAY_NAMES[number] for number in local.dayofweek],
+            "weekday": [WEEKDAY_NAMES[number] for number in local.day_of_week],
             "hour": local.hour,
         }
     )

@@ -56,7 +56,7 @@ def steps_in(window: Window, local_time: pd.DatetimeIndex) -> BoolArray:
     array of bool, shape (steps,)
         True inside the window.
     """
-    return calendar_of(window)[local_time.month - 1, local_time.weekday, local_time.hour]
+    return calendar_of(window)[local_time.month - 1, local_time.day_of_week, local_time.hour]
 
 
 def _hours(window: Window) -> list[int]:
