@@ -43,7 +43,7 @@ class MeterFault:
     Parameters
     ----------
     kind : {"missing", "empty", "stuck"}
-        Rows left out; rows without a value; the last value repeated.
+        Rows left out; rows without a value; the first value of the stretch repeated.
     first : datetime
         Local beginning of the first spoilt interval, away from clock changes.
     hours : float [h]
@@ -202,8 +202,10 @@ def reading_round(
     return (*times, next_year)
 
 
-def month_ends(year: int, *, moved: dict[int, int] | None = None) -> tuple[date, ...]:
-    """Last days of twelve monthly bills.
+def month_ends(
+    year: int, *, moved: dict[int, int] | None = None, extra: tuple[date, ...] = ()
+) -> tuple[date, ...]:
+    """Last days of the year's bills: twelve months, and further readings.
 
     Parameters
     ----------
@@ -211,15 +213,18 @@ def month_ends(year: int, *, moved: dict[int, int] | None = None) -> tuple[date,
         Calendar year.
     moved : dict of month to days, optional
         Months whose meter was read some days early (negative) or late.
+    extra : tuple of date
+        Further last days, such as both ends of a works holiday.
 
     Returns
     -------
     tuple of date
-        Ascending; December always ends with the year.
+        Ascending; the last bill ends with the year.
     """
     firsts = [date(year, month, 1) for month in range(2, 13)] + [date(year + 1, 1, 1)]
     shifts = moved or {}
-    return tuple(
+    ends = [
         first - timedelta(days=1) + timedelta(days=shifts.get(month, 0))
         for month, first in enumerate(firsts, start=1)
-    )
+    ]
+    return tuple(sorted((*ends, *extra)))

@@ -92,7 +92,15 @@ DEMO_FACTORY = InventedSite(
             YEAR, weekday=0, at=time(5, 0), every_days=7, missed=(5, 12, 25, 26, 38)
         ),
     ),
-    bills=BillPlan("steam", 0.79, month_ends(YEAR, moved={4: 2, 10: -2})),
+    bills=BillPlan(
+        "steam",
+        0.79,
+        month_ends(
+            YEAR,
+            moved={4: 2, 7: -4, 10: -2},
+            extra=(date(YEAR, 8, 10), date(YEAR, 12, 23)),
+        ),
+    ),
     weather=WeatherExport(
         dialect=Dialect(
             file="weather_gmt.csv",
@@ -165,7 +173,15 @@ STARTER_FACTORY = InventedSite(
         first_m3=240118.0,
         readings=reading_round(YEAR, weekday=0, at=time(5, 0), every_days=7),
     ),
-    bills=BillPlan("steam", 0.79, month_ends(YEAR)),
+    bills=BillPlan(
+        "steam",
+        0.79,
+        month_ends(
+            YEAR,
+            moved={7: 3},
+            extra=(date(YEAR, 8, 17), date(YEAR, 12, 23)),
+        ),
+    ),
     weather=WeatherExport(
         dialect=Dialect(
             file="weather.csv",

@@ -94,7 +94,7 @@ def power_file(power_kW: FloatArray, export: PowerExport, clock: SiteClock) -> s
     for fault in export.faults:
         stretch = _stretch(clock, fault.first, fault.hours)
         if fault.kind == "stuck":
-            values = np.where(stretch, values[np.flatnonzero(stretch)[0] - 1], values)
+            values = np.where(stretch, values[np.flatnonzero(stretch)[0]], values)
         empty |= stretch if fault.kind == "empty" else False
         missing |= stretch if fault.kind == "missing" else False
 
