@@ -104,7 +104,7 @@ def day_class(wall: pd.DatetimeIndex) -> IntArray:
     array of int, shape (slots,)
         0 on Monday to Friday, 1 on Saturday, 2 on Sunday.
     """
-    return np.maximum(np.asarray(wall.dayofweek, dtype=np.int64) - 4, 0)
+    return np.maximum(np.asarray(wall.day_of_week, dtype=np.int64) - 4, 0)
 
 
 @dataclass(frozen=True)

@@ -104,8 +104,18 @@ def _interval_faults(table: TextTable, stamps: ReadStamps, interval_minutes: int
     overlapping = np.flatnonzero(apart_s < interval_minutes * 60)
     late = stamps.places[np.isin(stamps.seconds, np.unique(stamps.seconds)[1 + overlapping])]
     return [
-        *_rows_with(table, beside, f"a stamp beside the {finest_min}-minute grid", "move it there"),
-        *_rows_with(table, late, "an interval that overlaps the one before", "leave one out"),
+        *_rows_with(
+            table,
+            beside,
+            f"a stamp beside the {finest_min}-minute grid",
+            f"must begin on a full {finest_min} minutes of standard time",
+        ),
+        *_rows_with(
+            table,
+            late,
+            "an interval that overlaps the one before",
+            f"must begin {interval_minutes} min or more after it",
+        ),
     ]
 
 
@@ -123,7 +133,7 @@ def _year_faults(
         return []
     cells = table.columns[stamp_column]
     came = f"{cells[stamps.places[0]]} to {cells[stamps.places[-1]]}"
-    return [Fault(table.file, came, f"must cover {site.year}, the year of the study")]
+    return [Fault(table.file, came, f"must cover {site.year}, the study's year")]
 
 
 def _merged(
@@ -141,12 +151,12 @@ def _merged(
     interval_h = meter.interval_minutes / 60.0
     findings = []
     if alike:
-        what = f"{alike} intervals stand there more than once with the same value; merged"
+        what = f"intervals that stand there again with the same value: {alike}; merged"
         findings.append(Finding(file, what, f"{alike * interval_h:g} h, no energy changed"))
     if unlike.any():
         hours, energy = unlike.sum() * interval_h, spread_kW.sum() * interval_h
-        what = f"{unlike.sum()} intervals stand there with different values; their mean is taken"
-        effect = f"{hours:g} h, in doubt by {energy:,.0f} kWh"
+        what = f"intervals with two different values: {unlike.sum()}; their mean is taken"
+        effect = f"{hours:g} h, in doubt by {energy:,.1f} kWh"
         advice = "Ask which of the rows hold."
         findings.append(Finding(file, what, effect, advice, "attention"))
     return starts, np.asarray(by_start.mean(), dtype=np.float64), findings

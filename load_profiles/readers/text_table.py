@@ -12,7 +12,7 @@ import pandas as pd
 from load_profiles.arrays import FloatArray, IntArray
 from load_profiles.declarations import Layout
 from load_profiles.faults import Fault, ProfileError
-from load_profiles.row_faults import row_faults
+from load_profiles.row_faults import row_faults, shown
 
 #: Larger files are refused before they are read; a year of minutes is 20 MB.
 LARGEST_FILE_BYTES = 50_000_000
@@ -183,15 +183,15 @@ def _header_faults(
         declared = _DELIMITERS[layout.delimiter]
         hint = f"; is the delimiter a {_DELIMITERS[others[0]]}?" if others else ""
         must = f"must hold {len(columns)} or more columns parted by a {declared}{hint}"
-        return [Fault(path, f'one column "{_short(header[0])}"', must)]
+        return [Fault(path, f'one column "{shown(header[0])}"', must)]
     faults = []
     for name, key in columns.items():
         if header.count(name) > 1:
             faults.append(Fault(path, f'"{name}" twice', f"{key} must name one column"))
         elif name not in header:
             near = difflib.get_close_matches(name, header, n=1, cutoff=0.4)
-            listed = _short(", ".join(filter(None, header)))
-            advice = f'nearest is "{near[0]}"' if near else f"the columns are: {listed}"
+            listed = shown(", ".join(filter(None, header)))
+            advice = f'nearest is "{shown(near[0])}"' if near else f"the columns are: {listed}"
             must = f'has no column "{name}" that {key} names; {advice}'
             faults.append(Fault(path, "header", must))
     return faults
@@ -204,9 +204,3 @@ def _width_faults(file: str, body: list[tuple[int, list[str]]], width: int) -> l
     return row_faults(
         file, [row for row, _ in wrong], came, f"must have {width}, as the header has"
     )
-
-
-def _short(text: str) -> str:
-    """A text cut to what a message can hold."""
-    longest = 80
-    return text if len(text) <= longest else text[: longest - 1] + "…"

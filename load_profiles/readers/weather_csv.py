@@ -79,7 +79,7 @@ def read_weather(
     if stamps.seconds.size and not inside.any():
         cells = table.columns[weather.stamp_column]
         came = f"{cells[stamps.places[0]]} to {cells[stamps.places[-1]]}"
-        faults.append(Fault(table.file, came, f"must cover {site.year}, the year of the study"))
+        faults.append(Fault(table.file, came, f"must cover {site.year}, the study's year"))
         raise ProfileError(tuple(faults))
     series: dict[str, FloatArray] = {}
     findings: list[Finding] = [*stamps.findings]
