@@ -85,7 +85,7 @@ class SiteClock:
     @cached_property
     def weekday(self) -> NDArray[np.int64]:
         """Day of the week on the site's clock, 0 for Monday; holidays count as Sundays."""
-        return np.where(self.on_days(self.holidays), SUNDAY, np.asarray(self.local.weekday))
+        return np.where(self.on_days(self.holidays), SUNDAY, np.asarray(self.local.day_of_week))
 
     def on_days(self, days: tuple[date, ...]) -> NDArray[np.bool_]:
         """Steps of some local days.

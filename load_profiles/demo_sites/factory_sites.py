@@ -68,10 +68,10 @@ DEMO_FACTORY = InventedSite(
         quantity="mean_kW",
         marks="end",
         faults=(
-            MeterFault("empty", datetime(YEAR, 1, 23, 15, 0), 2.0),  # noqa: DTZ001 -- local
-            MeterFault("missing", datetime(YEAR, 3, 18, 10, 30), 5.5),  # noqa: DTZ001 -- local
-            MeterFault("stuck", datetime(YEAR, 6, 12, 0, 0), 24.0),  # noqa: DTZ001 -- local
-            MeterFault("missing", datetime(YEAR, 9, 14, 3, 0), 1.5),  # noqa: DTZ001 -- local
+            MeterFault("empty", datetime.fromisoformat("2025-01-23T15:00"), 2.0),
+            MeterFault("missing", datetime.fromisoformat("2025-03-18T10:30"), 5.5),
+            MeterFault("stuck", datetime.fromisoformat("2025-06-12T00:00"), 24.0),
+            MeterFault("missing", datetime.fromisoformat("2025-09-14T03:00"), 1.5),
         ),
     ),
     register=RegisterExport(
@@ -111,7 +111,7 @@ DEMO_FACTORY = InventedSite(
             clock="standard",
         ),
         headers=("Temp C", "RH %", "Pressure hPa"),
-        lost=((datetime(YEAR, 4, 27, 2, 0), 3),),  # noqa: DTZ001 -- standard time
+        lost=((datetime.fromisoformat("2025-04-27T02:00"), 3),),
     ),
 )
 
@@ -153,9 +153,7 @@ STARTER_FACTORY = InventedSite(
         value_header="import_kWh",
         quantity="energy_kWh",
         marks="start",
-        faults=(
-            MeterFault("missing", datetime(YEAR, 5, 14, 11, 0), 3.0),  # noqa: DTZ001 -- local
-        ),
+        faults=(MeterFault("missing", datetime.fromisoformat("2025-05-14T11:00"), 3.0),),
     ),
     register=RegisterExport(
         dialect=Dialect(

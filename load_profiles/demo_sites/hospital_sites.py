@@ -83,10 +83,10 @@ DEMO_HOSPITAL = InventedSite(
         quantity="energy_kWh",
         marks="start",
         faults=(
-            MeterFault("missing", datetime(YEAR, 2, 11, 9, 15), 3.5),  # noqa: DTZ001 -- local
-            MeterFault("empty", datetime(YEAR, 5, 22, 13, 0), 1.25),  # noqa: DTZ001 -- local
-            MeterFault("stuck", datetime(YEAR, 8, 19, 0, 0), 24.0),  # noqa: DTZ001 -- local
-            MeterFault("missing", datetime(YEAR, 11, 8, 1, 0), 9.0),  # noqa: DTZ001 -- local
+            MeterFault("missing", datetime.fromisoformat("2025-02-11T09:15"), 3.5),
+            MeterFault("empty", datetime.fromisoformat("2025-05-22T13:00"), 1.25),
+            MeterFault("stuck", datetime.fromisoformat("2025-08-19T00:00"), 24.0),
+            MeterFault("missing", datetime.fromisoformat("2025-11-08T01:00"), 9.0),
         ),
     ),
     register=RegisterExport(
@@ -118,7 +118,7 @@ DEMO_HOSPITAL = InventedSite(
             clock="utc",
         ),
         headers=("temperature_degC", "humidity_percent", "pressure_hPa"),
-        lost=((datetime(YEAR, 10, 3, 14, 0), 5),),  # noqa: DTZ001 -- standard time
+        lost=((datetime.fromisoformat("2025-10-03T14:00"), 5),),
     ),
 )
 
@@ -164,9 +164,7 @@ STARTER_HOSPITAL = InventedSite(
         value_header="import_kWh",
         quantity="energy_kWh",
         marks="start",
-        faults=(
-            MeterFault("missing", datetime(YEAR, 6, 17, 10, 0), 4.0),  # noqa: DTZ001 -- local
-        ),
+        faults=(MeterFault("missing", datetime.fromisoformat("2025-06-17T10:00"), 4.0),),
     ),
     register=RegisterExport(
         dialect=Dialect(
