@@ -117,17 +117,17 @@ def running(hourly: pd.DataFrame, step_h: float) -> Running:
     available_kW = maximum_kW[maximum_kW > 0.0]
     mean_maximum_kW = float(available_kW.mean()) if available_kW.size else 0.0
     made_kWh = float(power_kW.sum()) * step_h
-    imported_kW, exported_kW = hourly["grid_import_kW"].sum(), hourly["grid_export_kW"].sum()
-    kept_kW = float(power_kW.sum() - exported_kW)
-    dumped_kW = float(_all_grades(hourly, "dumped_{}_kW").sum())
-    used_kW = float(_all_grades(hourly, "unit_{}_kW").sum()) - dumped_kW
-    heater_kW = float(_all_grades(hourly, "heater_{}_kW").sum())
+    imported_kW = float(hourly["grid_import_kW"].to_numpy().sum())
+    kept_kW = float(power_kW.sum() - hourly["grid_export_kW"].to_numpy().sum())
+    dumped_kW = float(_all_grades(hourly, "dumped_{}_kW").to_numpy().sum())
+    used_kW = float(_all_grades(hourly, "unit_{}_kW").to_numpy().sum()) - dumped_kW
+    heater_kW = float(_all_grades(hourly, "heater_{}_kW").to_numpy().sum())
     return Running(
         run_hours=float(on.sum()) * step_h,
         starts=int(hourly["unit_start"].sum()),
         full_load_hours=_ratio(made_kWh, mean_maximum_kW),
         mean_load_frac=_ratio(float(power_kW[on].sum()), float(maximum_kW[on].sum())),
-        power_covered_frac=_ratio(kept_kW, kept_kW + float(imported_kW)),
+        power_covered_frac=_ratio(kept_kW, kept_kW + imported_kW),
         heat_covered_frac=_ratio(used_kW, used_kW + heater_kW),
     )
 

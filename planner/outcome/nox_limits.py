@@ -1,10 +1,13 @@
 """NOx limits of named regimes, and the one that holds for a study."""
 
 import difflib
+import math
 from dataclasses import dataclass
 
-from load_profiles import Fault
+from load_profiles import Fault, Finding
 from planner.outcome.published import published_rows
+from planner.plant.fuel import GasFuel
+from planner.study.sections import DataSheet
 from planner.study.study import Study
 
 #: File of limits under `planner/data`.
@@ -15,6 +18,10 @@ NO2_KG_PER_KMOL = 46.0055
 
 #: Molar volume of an ideal gas at 0 degC and 101.325 kPa, as emission rules use it.
 NORMAL_M3_PER_KMOL = 22.414
+
+#: Units in which rules state the size of a plant, in kW; the first is taken on LHV as permits are
+#: (*common practice*), the second, of 1,055,055.85 kJ an hour, on HHV as the rule says.
+KW_PER_SIZE_UNIT = {"MW thermal input": 1e3, "MMBtu/h HHV": 1_055_055.85 / 3600.0}
 
 
 @dataclass(frozen=True)
@@ -113,3 +120,49 @@ def regime_faults(study: Study) -> tuple[Fault, ...]:
             "emissions.nox_regime", f'"{regime}"', f"{must} Known are {', '.join(sorted(known))}"
         ),
     )
+
+
+def size_findings(study: Study, fuel: GasFuel) -> tuple[Finding, ...]:
+    """Machines whose fuel input lies outside the sizes that the regime is for.
+
+    Parameters
+    ----------
+    study : Study
+        Its regime and options.
+    fuel : GasFuel
+        Calorific values, to compare on the regime's basis.
+
+    Returns
+    -------
+    tuple of Finding
+        One for each such option. The sizes of several plants on one site may have to be added,
+        which only the permit decides; so this is no fault.
+    """
+    row = published_rows(LIMITS_FILE)[study.emissions.nox_regime]
+    unit = row["size_unit"]
+    regime = f"{study.emissions.nox_regime}: {row['what']}"
+    smallest = float(row["size_from"] or 0.0)
+    largest = float(row["size_below"] or math.inf)
+    findings = []
+    for number, option in enumerate(study.option, start=1):
+        size = _fuel_input_kW(option.unit.sheet, fuel, unit) / KW_PER_SIZE_UNIT[unit]
+        if not smallest <= size < largest:
+            findings.append(
+                Finding(
+                    where=f"option[{number}].unit.sheet",
+                    what=f"{size:.1f} {unit} is outside {regime}",
+                    effect="another NOx limit may hold",
+                    advice="Ask the permitting authority which limit and which aggregation hold.",
+                    severity="attention",
+                )
+            )
+    return tuple(findings)
+
+
+def _fuel_input_kW(sheet: DataSheet, fuel: GasFuel, size_unit: str) -> float:
+    """Fuel of the sheet's point, on the basis on which the regime states its sizes."""
+    input_kW = sheet.power_kW / sheet.efficiency_frac
+    wanted = "HHV" if size_unit.endswith("HHV") else "LHV"
+    if wanted == sheet.efficiency_basis:
+        return input_kW
+    return input_kW * fuel.hhv_over_lhv if wanted == "HHV" else input_kW / fuel.hhv_over_lhv

@@ -85,7 +85,11 @@ def internal_rates(flows: FloatArray) -> FloatArray:
     values = np.polyval(coefficients, factors)
     rates = [1.0 / factor - 1.0 for factor in factors[values == 0.0]]
     for place in np.flatnonzero(values[:-1] * values[1:] < 0.0):
-        root = brentq(lambda v: np.polyval(coefficients, v), factors[place], factors[place + 1])
+        root = brentq(
+            lambda factor: float(np.polyval(coefficients, factor)),
+            factors[place],
+            factors[place + 1],
+        )
         rates.append(1.0 / root - 1.0)
     return np.sort(np.asarray(rates, dtype=np.float64))
 

@@ -7,11 +7,12 @@ import pandas as pd
 import pytest
 
 from planner.outcome.nox import nox
-from planner.outcome.nox_limits import regime_faults
+from planner.outcome.nox_limits import regime_faults, size_findings
 from planner.results.records import Nox
 from tests.planner.market.small_study import (
     RoundGas,
     idle_flows,
+    small_option,
     small_study,
     small_unit,
     small_year,
@@ -131,3 +132,26 @@ def test_unknown_regime_names_the_nearest() -> None:
     assert fault.path == "emissions.nox_regime"
     assert fault.came == '"eu_mcp_new_turbin_gas"'
     assert "did you mean `eu_mcp_new_turbine_gas`?" in fault.must
+
+
+@pytest.mark.parametrize(
+    ("regime", "power_kW", "outside"),
+    [
+        ("eu_mcp_new_turbine_gas", 14_900.0, False),
+        ("eu_mcp_new_turbine_gas", 15_000.0, True),
+        ("eu_lcp_new_turbine_gas", 15_000.0, False),
+        ("us_kkkk_upto_50_gas", 3_990.0, False),
+        ("us_kkkk_upto_50_gas", 4_000.0, True),
+    ],
+)
+def test_machine_outside_the_sizes_of_its_regime(
+    regime: str, power_kW: float, outside: bool
+) -> None:
+    """At 30 % (LHV) 15 MW burn 50 MW; 50 MMBtu/h (HHV) are 14,654 kW, at 1.1 3,996 kW of power."""
+    sheet = {**small_unit()["sheet"], "power_kW": power_kW}
+    option = small_option(unit=small_unit(sheet=sheet))
+    study = small_study(option=(option,), emissions={"nox_regime": regime})
+
+    findings = size_findings(study, RoundGas())
+
+    assert bool(findings) is outside
