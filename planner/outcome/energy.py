@@ -83,13 +83,10 @@ def month_flows(hourly: pd.DataFrame, site_year: SiteYear) -> list[MonthFlows]:
     month = site_year.local_time.month
     monthly = flows_kW.groupby(month).sum().reindex(ALL_MONTHS, fill_value=0.0) * step_h
     peaks_kW = hourly["grid_import_kW"].groupby(month).max().reindex(ALL_MONTHS, fill_value=0.0)
+    sums = [dict(zip(monthly.columns, row, strict=True)) for row in monthly.to_numpy().tolist()]
     return [
-        MonthFlows(
-            month=number,
-            peak_import_kW=float(peaks_kW[number]),
-            **{str(name): float(value) for name, value in monthly.loc[number].items()},
-        )
-        for number in ALL_MONTHS
+        MonthFlows(month=number, peak_import_kW=peak_kW, **flows)
+        for number, peak_kW, flows in zip(ALL_MONTHS, peaks_kW.to_list(), sums, strict=True)
     ]
 
 
