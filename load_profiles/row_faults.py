@@ -9,7 +9,7 @@ NAMED_ROWS = 5
 
 
 def shown(text: str, *, longest: int = 80) -> str:
-    """A text from a file as a message can hold it.
+    r"""A text from a file as a message can hold it.
 
     Parameters
     ----------
@@ -25,7 +25,7 @@ def shown(text: str, *, longest: int = 80) -> str:
 
     Examples
     --------
-    >>> shown("two\\nlines\\x1b")
+    >>> shown("two\nlines\x1b")
     'two lines?'
     """
     line = "".join(mark if mark.isprintable() else "?" for mark in " ".join(text.split()))

@@ -16,6 +16,7 @@ from load_profiles.readers.stamps import read_stamps
 from load_profiles.readers.text_table import TextTable, read_text_table
 from load_profiles.row_faults import row_faults
 from load_profiles.runs import runs_of
+from load_profiles.typical_year import hours_of_year, with_leap_day
 
 #: Longer gaps are refused: weather has no like days [h].
 LONGEST_GAP_h = 6
@@ -74,7 +75,7 @@ def read_weather(
     table, named = _table(weather, folder)
     faults: list[Fault] = []
     stamps = read_stamps(table, weather, site, interval_s=3600, faults=faults)
-    hour = stamps.seconds // 3600
+    hour, notes = hours_of_year(stamps.seconds, site, table.file)
     inside = (hour >= 0) & (hour < site.hours)
     if stamps.seconds.size and not inside.any():
         cells = table.columns[weather.stamp_column]
@@ -82,17 +83,19 @@ def read_weather(
         faults.append(Fault(table.file, came, f"must cover {site.year}, the study's year"))
         raise ProfileError(tuple(faults))
     series: dict[str, FloatArray] = {}
-    findings: list[Finding] = [*stamps.findings]
+    findings: list[Finding] = [*stamps.findings, *notes]
     for kind, column in named.items():
         values = table.numbers(column, faults)
         faults += _range_faults(table, values, column, kind)
         hourly = _hourly(values[stamps.places][inside], hour[inside], site.hours)
+        if notes:
+            hourly = with_leap_day(hourly, site)
         series[kind] = _bridged(hourly, column, table.file, site, faults=faults, findings=findings)
     if faults:
         raise ProfileError(tuple(faults))
-    pressure_kPa, notes = _pressure(series.get("pressure"), weather, altitude_m, site.hours)
+    pressure_kPa, doubts = _pressure(series.get("pressure"), weather, altitude_m, site.hours)
     return WeatherYear(
-        series["temperature"], series["humidity"] / 100.0, pressure_kPa, (*findings, *notes)
+        series["temperature"], series["humidity"] / 100.0, pressure_kPa, (*findings, *doubts)
     )
 
 

@@ -6,8 +6,9 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from load_profiles import ProfileError
+from load_profiles.arrays import FloatArray
 from load_profiles.clock import SiteClock
-from load_profiles.gaps import FilledYear, FloatArray, bridge, fill_year
+from load_profiles.gaps import FilledYear, bridge, fill_year
 from load_profiles.runs import runs_of, within_runs
 from tests.load_profiles.known_year import known_power_kW
 

@@ -57,8 +57,8 @@ BROKEN = {
         text("time;power_kW", "2025-01-01 00:00;1"),
         [
             (
-                'meter.csv row 1 = one column "time;power_kW": must hold 2 or more columns parted by '
-                "a comma; is the delimiter a semicolon?"
+                'meter.csv row 1 = one column "time;power_kW": must hold 2 or more columns parted '
+                "by a comma; is the delimiter a semicolon?"
             )
         ],
     ),
@@ -122,12 +122,12 @@ BROKEN = {
         text("time,power_kW", "2025-03-30 01:45,1", "2025-03-30 02:00,2", "2025-03-30 02:15,2"),
         [
             (
-                "meter.csv row 3 = 2025-03-30 02:00: does not exist in Europe/Berlin; is the file in "
-                "standard time?"
+                "meter.csv row 3 = 2025-03-30 02:00: does not exist in Europe/Berlin; is the file "
+                "in standard time?"
             ),
             (
-                "meter.csv row 4 = 2025-03-30 02:15: does not exist in Europe/Berlin; is the file in "
-                "standard time?"
+                "meter.csv row 4 = 2025-03-30 02:15: does not exist in Europe/Berlin; is the file "
+                "in standard time?"
             ),
         ],
     ),
@@ -139,8 +139,8 @@ BROKEN = {
         text("time,power_kW", *(f"2025-01-01 00:{m:02d},1" for m in (0, 15, 30, 47))),
         [
             (
-                "meter.csv row 5 = a stamp beside the 15-minute grid: must begin on a full 15 minutes "
-                "of standard time"
+                "meter.csv row 5 = a stamp beside the 15-minute grid: must begin on a full 15 "
+                "minutes of standard time"
             )
         ],
     ),

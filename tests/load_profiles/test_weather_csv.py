@@ -124,3 +124,29 @@ def test_humidity_as_a_fraction_is_refused(tmp_path: Path) -> None:
 
     with pytest.raises(ProfileError, match="of 1 at most: must be in percent, 0 to 100"):
         read(tmp_path)
+
+
+@pytest.mark.parametrize(("year", "hours"), [(2025, 8760), (2024, 8784)])
+def test_typical_year_is_joined_by_the_calendar(tmp_path: Path, year: int, hours: int) -> None:
+    """Months of 1988 and 1994 serve 2025 hour by hour, and 28 February serves a leap day."""
+    rows = ["time,ambient_degC,relative_humidity_percent,pressure_hPa"]
+    for hour in range(8760):
+        stamp = np.datetime64("1994-01-01T00") + np.timedelta64(hour, "h")
+        text = str(stamp).replace("T", " ").replace("1994-02", "1990-02")
+        rows.append(f"{text}:00,{hour % 1000 / 40:.3f},{50 + hour % 7},1000")
+    (tmp_path / "weather.csv").write_text("\n".join(rows), encoding="utf-8")
+
+    read_year = read_weather(
+        WeatherFile(file="weather.csv", clock="standard"),
+        folder=tmp_path,
+        site=SiteClock("Europe/Berlin", year),
+        altitude_m=100.0,
+    )
+
+    written = np.arange(8760) % 1000 / 40
+    leap = np.concatenate((written[:1416], written[1392:1416], written[1416:]))
+    assert read_year.ambient_degC.size == hours
+    np.testing.assert_allclose(
+        read_year.ambient_degC, written if year == 2025 else leap, atol=1e-12
+    )
+    assert "weather of 1990 to 1994, not of" in read_year.findings[0].what
