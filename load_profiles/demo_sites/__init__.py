@@ -1,6 +1,6 @@
 """Two invented sites with raw files like a client's, and the seeded generator that wrote them.
 
-In the order in which data passes through: `noise` and `clock` (`NoiseStream`, `SiteClock`);
+In the order in which data passes through: `noise` and `clock` (`NoiseStream`, `StepClock`);
 `weather` (`Weather`); `hospital` and `factory` (`SiteDemand`, the truth); `exports` (dialects and
 meter faults); `hospital_sites` and `factory_sites` (`InventedSite`); `raw_files` (text of the
 files); `generator` (`TrueYear`, and writing). The folders `hospital/` and `factory/` hold each

@@ -7,15 +7,14 @@ from zoneinfo import ZoneInfo
 
 import numpy as np
 import pandas as pd
-from numpy.typing import NDArray
 
-from load_profiles.demo_sites.noise import FloatArray
+from load_profiles.arrays import BoolArray, FloatArray, IntArray
 
 SUNDAY = 6
 
 
 @dataclass(frozen=True)
-class SiteClock:
+class StepClock:
     """One calendar year of a site in steps of its own standard time.
 
     Parameters
@@ -83,11 +82,11 @@ class SiteClock:
         return np.asarray(local.hour + (local.minute + self.step_minutes / 2.0) / 60.0, dtype=float)
 
     @cached_property
-    def weekday(self) -> NDArray[np.int64]:
+    def weekday(self) -> IntArray:
         """Day of the week on the site's clock, 0 for Monday; holidays count as Sundays."""
         return np.where(self.on_days(self.holidays), SUNDAY, np.asarray(self.local.day_of_week))
 
-    def on_days(self, days: tuple[date, ...]) -> NDArray[np.bool_]:
+    def on_days(self, days: tuple[date, ...]) -> BoolArray:
         """Steps of some local days.
 
         Parameters
@@ -102,7 +101,7 @@ class SiteClock:
         """
         return np.isin(np.asarray(self.local.date), np.asarray(days, dtype=object))
 
-    def between(self, first_day: date, last_day: date) -> NDArray[np.bool_]:
+    def between(self, first_day: date, last_day: date) -> BoolArray:
         """Steps of a run of local days.
 
         Parameters

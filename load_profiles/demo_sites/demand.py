@@ -5,8 +5,8 @@ from dataclasses import dataclass
 import numpy as np
 from scipy.signal import lfilter
 
-from load_profiles.demo_sites.clock import SiteClock
-from load_profiles.demo_sites.noise import FloatArray
+from load_profiles.arrays import FloatArray
+from load_profiles.demo_sites.clock import StepClock
 
 
 @dataclass(frozen=True)
@@ -28,14 +28,14 @@ class SiteDemand:
     cooling_kW: FloatArray
 
 
-def on_steps(hourly: FloatArray, clock: SiteClock) -> FloatArray:
+def on_steps(hourly: FloatArray, clock: StepClock) -> FloatArray:
     """Hourly means as a course over the shorter steps of a clock.
 
     Parameters
     ----------
     hourly : array, shape (hours,)
         Means of standard hours.
-    clock : SiteClock
+    clock : StepClock
         Whose steps are wanted.
 
     Returns

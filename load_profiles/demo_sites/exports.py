@@ -149,23 +149,6 @@ class BillPlan:
     last_days: tuple[date, ...]
 
 
-@dataclass(frozen=True)
-class MonthlyBill:
-    """One bill as the supplier printed it.
-
-    Parameters
-    ----------
-    first_day, last_day : date
-        Days billed, both included.
-    fuel_hhv_kWh : int [kWh]
-        Fuel billed (HHV).
-    """
-
-    first_day: date
-    last_day: date
-    fuel_hhv_kWh: int
-
-
 def reading_round(
     year: int, *, weekday: int, at: time, every_days: int, missed: tuple[int, ...] = ()
 ) -> tuple[datetime, ...]:

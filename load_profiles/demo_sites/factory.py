@@ -4,14 +4,12 @@ from dataclasses import dataclass
 from datetime import date
 
 import numpy as np
-from numpy.typing import NDArray
 
-from load_profiles.demo_sites.clock import SiteClock, plateau
+from load_profiles.arrays import BoolArray, FloatArray
+from load_profiles.demo_sites.clock import StepClock, plateau
 from load_profiles.demo_sites.demand import SiteDemand, on_steps
-from load_profiles.demo_sites.noise import FloatArray, NoiseStream
+from load_profiles.demo_sites.noise import NoiseStream
 from load_profiles.demo_sites.weather import Weather
-
-BoolArray = NDArray[np.bool_]
 
 SATURDAY = 5
 
@@ -57,7 +55,7 @@ class FactorySize:
 
 
 def factory_demand(
-    size: FactorySize, clock: SiteClock, weather: Weather, stream: NoiseStream
+    size: FactorySize, clock: StepClock, weather: Weather, stream: NoiseStream
 ) -> SiteDemand:
     """True demands of a factory over the year.
 
@@ -65,7 +63,7 @@ def factory_demand(
     ----------
     size : FactorySize
         How much of everything it has.
-    clock : SiteClock
+    clock : StepClock
         Steps and working days.
     weather : Weather
         Hourly weather of the year.
@@ -97,7 +95,7 @@ def factory_demand(
     )
 
 
-def _stopped(size: FactorySize, clock: SiteClock) -> BoolArray:
+def _stopped(size: FactorySize, clock: StepClock) -> BoolArray:
     """Steps of the works holidays."""
     stopped = np.zeros(clock.steps, dtype=bool)
     for first_day, last_day in size.stops:
@@ -105,7 +103,7 @@ def _stopped(size: FactorySize, clock: SiteClock) -> BoolArray:
     return stopped
 
 
-def _shift_frac(clock: SiteClock) -> FloatArray:
+def _shift_frac(clock: StepClock) -> FloatArray:
     """Two shifts from Monday to Friday, one on Saturday morning."""
     hour, weekday = clock.local_hour, clock.weekday
     week = plateau(hour, from_h=6.0, to_h=21.8, edge_h=0.12)
@@ -113,7 +111,7 @@ def _shift_frac(clock: SiteClock) -> FloatArray:
     return np.where(weekday < SATURDAY, week, np.where(weekday == SATURDAY, saturday, 0.0))
 
 
-def _output_frac(clock: SiteClock, stopped: BoolArray, stream: NoiseStream) -> FloatArray:
+def _output_frac(clock: StepClock, stopped: BoolArray, stream: NoiseStream) -> FloatArray:
     """Production over capacity: order book, each shift's luck, breakdowns of an hour or two."""
     hour_steps = clock.steps_per_hour
     orders = 0.93 + 0.03 * stream.persistent(clock.steps, memory_steps=600.0 * hour_steps)
@@ -128,7 +126,7 @@ def _output_frac(clock: SiteClock, stopped: BoolArray, stream: NoiseStream) -> F
 
 
 def _dryer_frac(
-    clock: SiteClock,
+    clock: StepClock,
     output_frac: FloatArray,
     stopped: BoolArray,
 ) -> FloatArray:

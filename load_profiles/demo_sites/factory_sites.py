@@ -2,7 +2,7 @@
 
 from datetime import date, datetime, time
 
-from load_profiles.demo_sites.clock import SiteClock
+from load_profiles.demo_sites.clock import StepClock
 from load_profiles.demo_sites.exports import (
     BillPlan,
     Dialect,
@@ -30,7 +30,7 @@ DEMO_HOLIDAYS = (
 
 DEMO_FACTORY = InventedSite(
     seed=1040,
-    clock=SiteClock("Europe/London", YEAR, 30, DEMO_HOLIDAYS),
+    clock=StepClock("Europe/London", YEAR, 30, DEMO_HOLIDAYS),
     climate=Climate(
         mean_degC=9.9,
         seasonal_K=6.1,
@@ -117,7 +117,7 @@ DEMO_FACTORY = InventedSite(
 
 STARTER_FACTORY = InventedSite(
     seed=1077,
-    clock=SiteClock("Europe/Amsterdam", YEAR, 60),
+    clock=StepClock("Europe/Amsterdam", YEAR, 60),
     climate=Climate(
         mean_degC=10.9,
         seasonal_K=7.2,

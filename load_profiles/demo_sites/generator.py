@@ -7,8 +7,8 @@ from pathlib import Path
 import numpy as np
 import pandas as pd
 
+from load_profiles.declarations import MonthlyBill
 from load_profiles.demo_sites.demand import SiteDemand
-from load_profiles.demo_sites.exports import MonthlyBill
 from load_profiles.demo_sites.factory_sites import DEMO_FACTORY, STARTER_FACTORY
 from load_profiles.demo_sites.hospital_sites import DEMO_HOSPITAL, STARTER_HOSPITAL
 from load_profiles.demo_sites.invented_site import InventedSite

@@ -4,9 +4,10 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from load_profiles.demo_sites.clock import SUNDAY, SiteClock, bump, plateau
+from load_profiles.arrays import FloatArray
+from load_profiles.demo_sites.clock import SUNDAY, StepClock, bump, plateau
 from load_profiles.demo_sites.demand import SiteDemand, lagged, on_steps
-from load_profiles.demo_sites.noise import FloatArray, NoiseStream
+from load_profiles.demo_sites.noise import NoiseStream
 from load_profiles.demo_sites.weather import Weather
 
 #: Clinics and operating theatres by day of the week, Monday first: emergencies at weekends.
@@ -64,7 +65,7 @@ class HospitalSize:
 
 
 def hospital_demand(
-    size: HospitalSize, clock: SiteClock, weather: Weather, stream: NoiseStream
+    size: HospitalSize, clock: StepClock, weather: Weather, stream: NoiseStream
 ) -> SiteDemand:
     """True demands of a hospital over the year.
 
@@ -72,7 +73,7 @@ def hospital_demand(
     ----------
     size : HospitalSize
         How much of everything it has.
-    clock : SiteClock
+    clock : StepClock
         Steps and working days.
     weather : Weather
         Hourly weather of the year.
@@ -96,7 +97,7 @@ def hospital_demand(
     )
 
 
-def _power_kW(size: HospitalSize, clock: SiteClock, stream: NoiseStream) -> FloatArray:
+def _power_kW(size: HospitalSize, clock: StepClock, stream: NoiseStream) -> FloatArray:
     """Power without chillers."""
     hour = clock.local_hour
     clinics = CLINIC_DAYS[clock.weekday] * plateau(hour, from_h=7.0, to_h=16.8, edge_h=0.7)
@@ -118,7 +119,7 @@ def _power_kW(size: HospitalSize, clock: SiteClock, stream: NoiseStream) -> Floa
 
 
 def _hot_water_kW(
-    size: HospitalSize, clock: SiteClock, ambient_degC: FloatArray, stream: NoiseStream
+    size: HospitalSize, clock: StepClock, ambient_degC: FloatArray, stream: NoiseStream
 ) -> FloatArray:
     """Space heating behind thick walls, and domestic hot water."""
     hour = clock.local_hour
@@ -137,7 +138,7 @@ def _hot_water_kW(
 
 
 def _steam_kW(
-    size: HospitalSize, clock: SiteClock, ambient_degC: FloatArray, stream: NoiseStream
+    size: HospitalSize, clock: StepClock, ambient_degC: FloatArray, stream: NoiseStream
 ) -> FloatArray:
     """Steam for sterilisers, laundry, kitchen, and humidifiers in dry cold air."""
     hour = clock.local_hour
@@ -162,7 +163,7 @@ def _steam_kW(
 
 
 def _cooling_kW(
-    size: HospitalSize, clock: SiteClock, ambient_degC: FloatArray, stream: NoiseStream
+    size: HospitalSize, clock: StepClock, ambient_degC: FloatArray, stream: NoiseStream
 ) -> FloatArray:
     """Chilled water for rooms in warm weather, and for machines always."""
     above_K = np.maximum(ambient_degC - size.cooling_limit_degC, 0.0)

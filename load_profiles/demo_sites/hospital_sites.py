@@ -2,7 +2,7 @@
 
 from datetime import date, datetime, time
 
-from load_profiles.demo_sites.clock import SiteClock
+from load_profiles.demo_sites.clock import StepClock
 from load_profiles.demo_sites.exports import (
     BillPlan,
     Dialect,
@@ -37,7 +37,7 @@ DEMO_HOLIDAYS = (
 
 DEMO_HOSPITAL = InventedSite(
     seed=1070,
-    clock=SiteClock("Europe/Vienna", YEAR, 15, DEMO_HOLIDAYS),
+    clock=StepClock("Europe/Vienna", YEAR, 15, DEMO_HOLIDAYS),
     climate=Climate(
         mean_degC=10.1,
         seasonal_K=10.2,
@@ -124,7 +124,7 @@ DEMO_HOSPITAL = InventedSite(
 
 STARTER_HOSPITAL = InventedSite(
     seed=1038,
-    clock=SiteClock("Europe/Berlin", YEAR, 60),
+    clock=StepClock("Europe/Berlin", YEAR, 60),
     climate=Climate(
         mean_degC=10.4,
         seasonal_K=9.0,

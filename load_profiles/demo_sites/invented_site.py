@@ -2,7 +2,7 @@
 
 from dataclasses import dataclass
 
-from load_profiles.demo_sites.clock import SiteClock
+from load_profiles.demo_sites.clock import StepClock
 from load_profiles.demo_sites.demand import SiteDemand
 from load_profiles.demo_sites.exports import (
     BillPlan,
@@ -24,7 +24,7 @@ class InventedSite:
     ----------
     seed : int
         Of its noise.
-    clock : SiteClock
+    clock : StepClock
         Steps of its power meter.
     climate : Climate
         Its weather.
@@ -41,7 +41,7 @@ class InventedSite:
     """
 
     seed: int
-    clock: SiteClock
+    clock: StepClock
     climate: Climate
     size: HospitalSize | FactorySize
     power: PowerExport

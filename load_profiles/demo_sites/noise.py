@@ -1,10 +1,9 @@
 """Random numbers that are the same on every machine and in every NumPy version."""
 
 import numpy as np
-from numpy.typing import NDArray
 from scipy.signal import lfilter
 
-FloatArray = NDArray[np.float64]
+from load_profiles.arrays import FloatArray
 
 
 class NoiseStream:

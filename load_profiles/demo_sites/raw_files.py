@@ -7,21 +7,18 @@ from zoneinfo import ZoneInfo
 
 import numpy as np
 import pandas as pd
-from numpy.typing import NDArray
 
-from load_profiles.demo_sites.clock import SiteClock
+from load_profiles.arrays import BoolArray, FloatArray
+from load_profiles.declarations import MonthlyBill
+from load_profiles.demo_sites.clock import StepClock
 from load_profiles.demo_sites.exports import (
     BillPlan,
     Dialect,
-    MonthlyBill,
     PowerExport,
     RegisterExport,
     WeatherExport,
 )
-from load_profiles.demo_sites.noise import FloatArray
 from load_profiles.demo_sites.weather import Weather
-
-BoolArray = NDArray[np.bool_]
 
 #: One bill of a study file: the generator writes the fuel, a person everything else.
 BILL_LINE = re.compile(
@@ -29,7 +26,7 @@ BILL_LINE = re.compile(
 )
 
 
-def metered_power_kW(power_kW: FloatArray, export: PowerExport, clock: SiteClock) -> FloatArray:
+def metered_power_kW(power_kW: FloatArray, export: PowerExport, clock: StepClock) -> FloatArray:
     """True power rounded as the meter's export rounds it.
 
     Parameters
@@ -38,7 +35,7 @@ def metered_power_kW(power_kW: FloatArray, export: PowerExport, clock: SiteClock
         True mean power.
     export : PowerExport
         What a value of the file is.
-    clock : SiteClock
+    clock : StepClock
         Steps of the file.
 
     Returns
@@ -50,14 +47,14 @@ def metered_power_kW(power_kW: FloatArray, export: PowerExport, clock: SiteClock
     return np.asarray(np.round(power_kW * per_kW, 1) / per_kW)
 
 
-def spoilt_steps(export: PowerExport, clock: SiteClock) -> BoolArray:
+def spoilt_steps(export: PowerExport, clock: StepClock) -> BoolArray:
     """Steps in which the export does not hold what the meter saw.
 
     Parameters
     ----------
     export : PowerExport
         With its faults.
-    clock : SiteClock
+    clock : StepClock
         Steps of the file.
 
     Returns
@@ -71,7 +68,7 @@ def spoilt_steps(export: PowerExport, clock: SiteClock) -> BoolArray:
     return spoilt
 
 
-def power_file(power_kW: FloatArray, export: PowerExport, clock: SiteClock) -> str:
+def power_file(power_kW: FloatArray, export: PowerExport, clock: StepClock) -> str:
     """The power meter's export.
 
     Parameters
@@ -80,7 +77,7 @@ def power_file(power_kW: FloatArray, export: PowerExport, clock: SiteClock) -> s
         Metered mean power.
     export : PowerExport
         How it is written and what went wrong.
-    clock : SiteClock
+    clock : StepClock
         Steps of the file.
 
     Returns
@@ -112,7 +109,7 @@ def power_file(power_kW: FloatArray, export: PowerExport, clock: SiteClock) -> s
     return _table(export.dialect, (export.value_header,), rows)
 
 
-def register_file(heat_kW: FloatArray, export: RegisterExport, clock: SiteClock) -> str:
+def register_file(heat_kW: FloatArray, export: RegisterExport, clock: StepClock) -> str:
     """The list of gas-meter readings.
 
     Parameters
@@ -121,7 +118,7 @@ def register_file(heat_kW: FloatArray, export: RegisterExport, clock: SiteClock)
         True useful heat behind the meter.
     export : RegisterExport
         Meter, heaters and reading times.
-    clock : SiteClock
+    clock : StepClock
         Steps of the heat.
 
     Returns
@@ -145,14 +142,14 @@ def register_file(heat_kW: FloatArray, export: RegisterExport, clock: SiteClock)
     return _table(export.dialect, (export.value_header,), rows)
 
 
-def weather_recorded(export: WeatherExport, clock: SiteClock) -> BoolArray:
+def weather_recorded(export: WeatherExport, clock: StepClock) -> BoolArray:
     """Hours whose weather stands in the file.
 
     Parameters
     ----------
     export : WeatherExport
         With the hours that were lost.
-    clock : SiteClock
+    clock : StepClock
         The site's clock, whatever its steps.
 
     Returns
@@ -160,7 +157,7 @@ def weather_recorded(export: WeatherExport, clock: SiteClock) -> BoolArray:
     array of bool, shape (hours,)
         False where a row is missing.
     """
-    hourly = SiteClock(clock.time_zone, clock.year, 60)
+    hourly = StepClock(clock.time_zone, clock.year, 60)
     recorded = np.ones(hourly.steps, dtype=bool)
     for first, hours in export.lost:
         start = pd.Timestamp(first.replace(tzinfo=timezone(hourly.standard_offset)))
@@ -169,7 +166,7 @@ def weather_recorded(export: WeatherExport, clock: SiteClock) -> BoolArray:
     return recorded
 
 
-def weather_file(weather: Weather, export: WeatherExport, clock: SiteClock) -> str:
+def weather_file(weather: Weather, export: WeatherExport, clock: StepClock) -> str:
     """The weather station's export.
 
     Parameters
@@ -178,7 +175,7 @@ def weather_file(weather: Weather, export: WeatherExport, clock: SiteClock) -> s
         Hourly weather of the year.
     export : WeatherExport
         How it is written and what was lost.
-    clock : SiteClock
+    clock : StepClock
         The site's clock, whatever its steps.
 
     Returns
@@ -186,7 +183,7 @@ def weather_file(weather: Weather, export: WeatherExport, clock: SiteClock) -> s
     str
         Text of the file.
     """
-    hourly = SiteClock(clock.time_zone, clock.year, 60)
+    hourly = StepClock(clock.time_zone, clock.year, 60)
     kept = weather_recorded(export, clock)
     columns = (weather.ambient_degC, weather.relative_humidity_percent, weather.pressure_hPa)
     decimals = (1, 0, 1)
@@ -203,7 +200,7 @@ def weather_file(weather: Weather, export: WeatherExport, clock: SiteClock) -> s
     return _table(export.dialect, export.headers, rows)
 
 
-def monthly_bills(heat_kW: FloatArray, plan: BillPlan, clock: SiteClock) -> tuple[MonthlyBill, ...]:
+def monthly_bills(heat_kW: FloatArray, plan: BillPlan, clock: StepClock) -> tuple[MonthlyBill, ...]:
     """The gas bills of the year.
 
     Parameters
@@ -212,7 +209,7 @@ def monthly_bills(heat_kW: FloatArray, plan: BillPlan, clock: SiteClock) -> tupl
         True useful heat behind the bills.
     plan : BillPlan
         Heaters and days.
-    clock : SiteClock
+    clock : StepClock
         Steps of the heat.
 
     Returns
@@ -224,8 +221,8 @@ def monthly_bills(heat_kW: FloatArray, plan: BillPlan, clock: SiteClock) -> tupl
     for last_day in plan.last_days:
         billed = clock.between(first_day, last_day)
         heat_kWh = float(heat_kW[billed].sum()) * clock.step_minutes / 60.0
-        fuel_hhv_kWh = round(heat_kWh / plan.heater_efficiency_hhv_frac)
-        bills.append(MonthlyBill(first_day, last_day, fuel_hhv_kWh))
+        fuel_hhv_kWh = float(round(heat_kWh / plan.heater_efficiency_hhv_frac))
+        bills.append(MonthlyBill(first_day=first_day, last_day=last_day, fuel_hhv_kWh=fuel_hhv_kWh))
         first_day = last_day + timedelta(days=1)
     return tuple(bills)
 
@@ -249,19 +246,19 @@ def with_bills(study_text: str, bills: tuple[MonthlyBill, ...]) -> str:
 
     def line(match: re.Match[str]) -> str:
         bill = fuel[match[2], match[4]]
-        return f"{''.join(match.groups())}{bill.fuel_hhv_kWh}"
+        return f"{''.join(match.groups())}{bill.fuel_hhv_kWh:.0f}"
 
     return BILL_LINE.sub(line, study_text)
 
 
-def _stretch(clock: SiteClock, first: datetime, hours: float) -> BoolArray:
+def _stretch(clock: StepClock, first: datetime, hours: float) -> BoolArray:
     """Steps of a stretch that begins at a local time."""
     start = pd.Timestamp(first.replace(tzinfo=ZoneInfo(clock.time_zone)))
     end = start + pd.Timedelta(hours=hours)
     return np.asarray((clock.utc >= start) & (clock.utc < end))
 
 
-def _stamps(utc: pd.DatetimeIndex, dialect: Dialect, clock: SiteClock) -> list[str]:
+def _stamps(utc: pd.DatetimeIndex, dialect: Dialect, clock: StepClock) -> list[str]:
     """Instants as the file's clock shows them."""
     if dialect.clock == "local":
         shown = utc.tz_convert(clock.time_zone)

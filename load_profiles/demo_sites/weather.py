@@ -4,7 +4,8 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from load_profiles.demo_sites.noise import FloatArray, NoiseStream
+from load_profiles.arrays import FloatArray
+from load_profiles.demo_sites.noise import NoiseStream
 
 HOURS_A_YEAR = 8760.0
 
