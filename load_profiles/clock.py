@@ -117,13 +117,14 @@ class Localised:
         UTC; not a time where the stamp does not exist on the clock.
     missing : array of bool
         True for stamps that the clock skips in spring.
-    once : tuple of str
-        Days whose repeated hour the stamps show only once.
+    once, twice : tuple of str
+        Days whose repeated hour the stamps show only once, and those with both passes.
     """
 
     instants: pd.DatetimeIndex
     missing: BoolArray
     once: tuple[str, ...] = ()
+    twice: tuple[str, ...] = ()
 
 
 def to_utc(stamps: pd.DatetimeIndex, clock: Clock, site: SiteClock) -> Localised:
@@ -160,16 +161,22 @@ def _local_to_utc(stamps: pd.DatetimeIndex, time_zone: str) -> Localised:
     missing = np.asarray(first.isna())
     repeated = ~missing & np.asarray(first != second)
     later = np.zeros(len(stamps), dtype=bool)
-    later[repeated], once = _second_pass(stamps[repeated])
-    return Localised(pd.DatetimeIndex(first.where(~later, second)), missing, once)
+    later[repeated] = _second_pass(stamps[repeated])
+    both = stamps[later].normalize().unique()
+    once = stamps[repeated].normalize().unique().difference(both)
+    instants = pd.DatetimeIndex(first.where(~later, second))
+    return Localised(instants, missing, _written(once), _written(both))
 
 
-def _second_pass(stamps: pd.DatetimeIndex) -> tuple[BoolArray, tuple[str, ...]]:
-    """Which stamps of repeated hours are of the second pass, and the days that show one pass."""
+def _second_pass(stamps: pd.DatetimeIndex) -> BoolArray:
+    """Which stamps of repeated hours come after the clock was turned back."""
     days = stamps.normalize()
     turned_back = np.zeros(len(stamps), dtype=bool)
     turned_back[1:] = (stamps[1:] <= stamps[:-1]) & (days[1:] == days[:-1])
     passes = pd.Series(turned_back).groupby(np.asarray(days)).cummax()
-    later: BoolArray = np.asarray(passes, dtype=np.bool_)
-    once = days.unique().difference(days[later].unique())
-    return later, tuple(str(day.date()) for day in once)
+    return np.asarray(passes, dtype=np.bool_)
+
+
+def _written(days: pd.DatetimeIndex) -> tuple[str, ...]:
+    """Days as a reader knows them."""
+    return tuple(str(day.date()) for day in days)

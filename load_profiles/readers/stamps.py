@@ -73,6 +73,7 @@ def read_stamps(
     length = pd.Timedelta(seconds=interval_s if layout.stamp_marks == "end" else 0)
     if zoned:
         return ReadStamps(site.seconds(stamps - length), places)
+    faults += _contradictions(table.file, stamps, layout, site)
     read, by_label = _localised(stamps, length, layout, site)
     skipped = places[read.missing]
     must = f"does not exist in {site.time_zone}; is the file in standard time?"
@@ -109,6 +110,21 @@ def _localised(
         if not labels.missing.any():
             return labels, True
     return replace(read, instants=read.instants - length), False
+
+
+def _contradictions(
+    file: str, stamps: pd.DatetimeIndex, layout: Layout, site: SiteClock
+) -> list[Fault]:
+    """A file that is said to keep one offset, yet follows the wall clock at both changes."""
+    if layout.clock == "local":
+        return []
+    local = to_utc(stamps, "local", site)
+    whole_year = pd.Timedelta(days=330)
+    if local.missing.any() or not local.twice or stamps.max() - stamps.min() < whole_year:
+        return []
+    came = f"the hour of {local.twice[0]} that clocks in {site.time_zone} repeat, twice"
+    must = f'cannot be on clock = "{layout.clock}"; declare clock = "local"'
+    return [Fault(file, came, must)]
 
 
 def _clock_findings(file: str, once: tuple[str, ...], *, by_label: bool) -> tuple[Finding, ...]:

@@ -162,15 +162,17 @@ def _bytes(path: Path, file: str) -> bytes:
 
 def _records(text: str, layout: Layout) -> list[tuple[int, list[str]]]:
     """Line number and cells of each row that is not blank, from the header on."""
-    reader = csv.reader(io.StringIO(text, newline=""), delimiter=layout.delimiter)
+    above = layout.skip_rows
+    table = "".join(io.StringIO(text, newline="").readlines()[above:])  # prose may hold a quote
+    reader = csv.reader(io.StringIO(table, newline=""), delimiter=layout.delimiter)
     try:
         return [
-            (reader.line_num, record)
-            for record in reader
-            if reader.line_num > layout.skip_rows and any(map(str.strip, record))
+            (above + reader.line_num, record) for record in reader if any(map(str.strip, record))
         ]
     except csv.Error as error:
-        raise _refusal(f"{layout.file} row {reader.line_num}", str(error), "is no CSV") from None
+        raise _refusal(
+            f"{layout.file} row {above + reader.line_num}", str(error), "is no CSV"
+        ) from None
 
 
 def _header_faults(

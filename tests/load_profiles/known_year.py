@@ -4,9 +4,11 @@ Local times come from the standard library's `datetime` and `zoneinfo`, not from
 is tested.
 """
 
+import re
 from collections.abc import Sequence
 from dataclasses import dataclass, field
 from datetime import UTC, datetime, timedelta
+from functools import cache
 from pathlib import Path
 from zoneinfo import ZoneInfo
 
@@ -38,6 +40,7 @@ class Export:
     preamble: tuple[str, ...] = ()
     left_out: frozenset[int] = field(default_factory=frozenset)
 
+    @cache  # noqa: B019 -- tests write the same few exports again and again
     def stamps(self, slots: int) -> list[str]:
         """The stamps of the slots from the beginning of the year."""
         first = year_start(self.year, self.standard_offset_h)
@@ -59,13 +62,13 @@ class Export:
 
     def write(self, path: Path, *columns: Sequence[float] | FloatArray) -> None:
         """Write the file; `nan` becomes an empty cell, slots in `left_out` no row at all."""
-        lines = [*self.preamble, self.delimiter.join(self.header)]
-        stamps = self.stamps(len(columns[0]))
-        for slot, (stamp, *values) in enumerate(zip(stamps, *columns, strict=True)):
-            if slot not in self.left_out:
-                cells = ["" if np.isnan(value) else f"{value:.10g}" for value in values]
-                cells = [cell.replace(".", self.decimal) for cell in cells]
-                lines.append(self.delimiter.join((stamp, *cells)))
+        texts = [[f"{value:.10g}" for value in np.asarray(column).tolist()] for column in columns]
+        rows = list(zip(self.stamps(len(columns[0])), *texts, strict=True))
+        kept = [row for slot, row in enumerate(rows) if slot not in self.left_out]
+        body = "\n".join(map(self.delimiter.join, kept if self.left_out else rows))
+        if self.decimal == ",":
+            body = re.sub(r"(\d)\.(\d+)$", r"\1,\2", body, flags=re.MULTILINE)
+        lines = [*self.preamble, self.delimiter.join(self.header), body.replace("nan", "")]
         path.write_text("\n".join(lines) + "\n", encoding="utf-8")
 
 

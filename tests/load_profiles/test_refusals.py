@@ -10,6 +10,7 @@ from load_profiles.clock import SiteClock
 from load_profiles.declarations import IntervalMeter
 from load_profiles.readers.interval_csv import read_interval_meter
 from load_profiles.row_faults import row_faults
+from tests.load_profiles.known_year import Export, known_power_kW
 
 BERLIN = SiteClock("Europe/Berlin", 2025)
 
@@ -212,6 +213,28 @@ def test_iso_stamp_without_offset_is_refused(tmp_path: Path) -> None:
             "2025-03-30T01:00:00+01:00"
         )
     ]
+
+
+def test_local_file_declared_as_standard_is_refused(tmp_path: Path) -> None:
+    """A year that repeats the October hour and skips the March hour proves the wall clock."""
+    Export(header=("time", "power_kW")).write(tmp_path / "meter.csv", known_power_kW(8760 * 4))
+
+    assert refusal(tmp_path, METER.model_copy(update={"clock": "standard"})) == [
+        (
+            "meter.csv = the hour of 2025-10-26 that clocks in Europe/Berlin repeat, twice: "
+            'cannot be on clock = "standard"; declare clock = "local"'
+        )
+    ]
+
+
+def test_quote_in_the_prose_above_the_header_is_passed_over(tmp_path: Path) -> None:
+    """An open quote above the header does not swallow the table; rows keep their numbers."""
+    rows = ["time,power_kW", "2025-01-01 00:00,1", "2025-01-01 00:15,x"]
+    (tmp_path / "meter.csv").write_bytes(text('Export "A', "", *rows))
+
+    assert refusal(tmp_path, METER.model_copy(update={"skip_rows": 2}))[0].startswith(
+        'meter.csv row 5 = power_kW "x"'
+    )
 
 
 def test_overlapping_intervals_are_refused(tmp_path: Path) -> None:

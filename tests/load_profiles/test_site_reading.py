@@ -2,7 +2,8 @@
 
 import subprocess
 import sys
-from datetime import date
+from dataclasses import replace
+from datetime import date, timedelta
 from pathlib import Path
 from typing import Any
 
@@ -29,6 +30,9 @@ BILLS: dict[str, Any] = {
         for month, last in enumerate((31, 28, 31, 30, 31, 30, 31, 31, 30, 31, 30, 31), start=1)
     ),
 }
+LAST_DAYS_2024 = [date(2024, month, 1) - timedelta(days=1) for month in range(2, 13)] + [
+    date(2024, 12, 31)
+]
 REGISTER = {
     "source": "gas_register",
     "file": "gas.csv",
@@ -107,6 +111,37 @@ def test_site_year_is_complete_and_non_negative(tmp_path: Path) -> None:
     assert site.hourly.index.is_unique
     assert not site.hourly.isna().to_numpy().any()
     assert (site.hourly[[f"{name}_kW" for name in CARRIERS]].to_numpy() >= 0.0).all()
+
+
+def test_southern_leap_year_closes_too(tmp_path: Path) -> None:
+    """Sydney 2024: 8784 hours from 1 January 00:00 AEST, and the bills come to their total."""
+    export = Export(time_zone="Australia/Sydney", standard_offset_h=10.0, year=2024)
+    power_kW = known_power_kW(8784 * 4)
+    export.write(tmp_path / "power.csv", power_kW)
+    header = ("time", "ambient_degC", "relative_humidity_percent")
+    ambient_degC = np.round(15.0 + 8.0 * np.cos(2 * np.pi * np.arange(8784) / 8784), 2)
+    replace(export, minutes=60, clock="standard", header=header).write(
+        tmp_path / "weather.csv", ambient_degC, np.full(8784, 60.0)
+    )
+    bills = [
+        {**bill, "first_day": bill["first_day"].replace(year=2024), "last_day": last}
+        for bill, last in zip(BILLS["bill"], LAST_DAYS_2024, strict=True)
+    ]
+
+    site = read_site_year(
+        DemandFiles.model_validate({"power": meter(), "steam": {**BILLS, "bill": tuple(bills)}}),
+        WEATHER,
+        folder=tmp_path,
+        year=2024,
+        time_zone="Australia/Sydney",
+        altitude_m=20.0,
+    )
+
+    np.testing.assert_allclose(
+        site.hourly["power_kW"], power_kW.reshape(-1, 4).mean(axis=1), rtol=1e-14
+    )
+    assert str(site.hourly.index[0]) == "2023-12-31 14:00:00+00:00"
+    assert site.hourly["steam_kW"].sum() == pytest.approx(78_000.0 * 0.8, rel=1e-9)
 
 
 def test_origins_tell_how_each_hour_is_known(tmp_path: Path) -> None:
