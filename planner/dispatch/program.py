@@ -1,0 +1,249 @@
+"""A mixed-integer linear programme assembled from whole arrays and handed to HiGHS.
+
+The dispatch states hundreds of thousands of rows that differ only in their hour. Here a family of
+columns or rows is one call with arrays, so that a month is put together in milliseconds; the same
+problem written row by row for the reader is in `model_of_record`.
+"""
+
+from dataclasses import dataclass
+
+import highspy
+import numpy as np
+from scipy import sparse
+
+from planner.arrays import BoolArray, FloatArray, IntArray
+from planner.errors import SolveError
+
+#: HiGHS counts bounds beyond this as infinite.
+INFINITY = highspy.kHighsInf
+
+Term = tuple[FloatArray | float, IntArray]
+
+
+@dataclass(frozen=True)
+class Answer:
+    """What HiGHS found.
+
+    Parameters
+    ----------
+    values : array, shape (columns,)
+        Best solution.
+    objective : float [currency]
+        Its cost, offset included.
+    bound : float [currency]
+        Proven lower bound on the cost.
+    row_duals : array, shape (rows,)
+        Marginal cost of each row's right-hand side; all zero where integers were decided.
+    """
+
+    values: FloatArray
+    objective: float
+    bound: float
+    row_duals: FloatArray
+
+
+class Program:
+    """Columns and rows, family by family."""
+
+    def __init__(self) -> None:
+        self._low: list[FloatArray] = []
+        self._high: list[FloatArray] = []
+        self._cost: list[FloatArray] = []
+        self._whole: list[BoolArray] = []
+        self._further_cost: list[tuple[IntArray, float]] = []
+        self._entries: list[tuple[IntArray, IntArray, FloatArray]] = []
+        self._row_low: list[FloatArray] = []
+        self._row_high: list[FloatArray] = []
+        self.columns = 0
+        self.rows = 0
+        self.offset = 0.0
+
+    def add_columns(
+        self,
+        count: int,
+        *,
+        low: FloatArray | float = 0.0,
+        high: FloatArray | float = INFINITY,
+        cost: FloatArray | float = 0.0,
+        whole: bool = False,
+    ) -> IntArray:
+        """Add a family of columns.
+
+        Parameters
+        ----------
+        count : int
+            How many.
+        low, high, cost : float or array, shape (count,)
+            Bounds and cost of each.
+        whole : bool
+            Whether they must be whole numbers.
+
+        Returns
+        -------
+        array of int, shape (count,)
+            Their numbers.
+        """
+        for store, value in ((self._low, low), (self._high, high), (self._cost, cost)):
+            store.append(np.broadcast_to(np.asarray(value, dtype=np.float64), (count,)))
+        self._whole.append(np.full(count, whole))
+        self.columns += count
+        return np.arange(self.columns - count, self.columns, dtype=np.int64)
+
+    def add_to_cost(self, columns: IntArray, cost: float) -> None:
+        """Add to the cost of columns that stand already.
+
+        Parameters
+        ----------
+        columns : array of int
+            Column numbers, each once.
+        cost : float
+            Added to the cost of each.
+        """
+        self._further_cost.append((columns, cost))
+
+    def add_rows(
+        self,
+        terms: list[Term],
+        *,
+        low: FloatArray | float = -INFINITY,
+        high: FloatArray | float = INFINITY,
+    ) -> IntArray:
+        """Add a family of rows, each the sum of one entry of every term.
+
+        Parameters
+        ----------
+        terms : list of (coefficient, columns)
+            Coefficients (float or array) and column numbers; all columns have the same length.
+        low, high : float or array, shape (rows,)
+            Bounds of each row.
+
+        Returns
+        -------
+        array of int, shape (rows,)
+            Their numbers.
+        """
+        count = len(terms[0][1])
+        numbers = np.arange(self.rows, self.rows + count, dtype=np.int64)
+        for coefficient, columns in terms:
+            factors = np.broadcast_to(np.asarray(coefficient, dtype=np.float64), (count,))
+            self._entries.append((numbers, columns, factors))
+        for store, value in ((self._row_low, low), (self._row_high, high)):
+            store.append(np.broadcast_to(np.asarray(value, dtype=np.float64), (count,)))
+        self.rows += count
+        return numbers
+
+    def add_to_rows(
+        self, rows: IntArray, coefficient: FloatArray | float, columns: IntArray
+    ) -> None:
+        """Add further entries to rows that stand already.
+
+        Parameters
+        ----------
+        rows : array of int
+            Row numbers, repeated where a row gets several entries.
+        coefficient : float or array
+            One for each entry.
+        columns : array of int
+            One for each entry.
+        """
+        factors = np.broadcast_to(np.asarray(coefficient, dtype=np.float64), (len(rows),))
+        self._entries.append((rows, columns, factors))
+
+    def solve(
+        self,
+        *,
+        gap_frac: float,
+        time_limit_s: float,
+        fixed: tuple[IntArray, FloatArray] | None = None,
+    ) -> Answer:
+        """Solve with HiGHS, and read its own bound.
+
+        Parameters
+        ----------
+        gap_frac : float [-]
+            Relative gap at which a solution with whole numbers is good enough.
+        time_limit_s : float [s]
+            After this the best solution so far is taken, with its honest bound.
+        fixed : tuple of columns and values, optional
+            Columns that are fixed, and no longer whole: the rest is a linear programme.
+
+        Returns
+        -------
+        Answer
+            Best solution and bound.
+
+        Raises
+        ------
+        SolveError
+            If HiGHS fails, or returns nothing that can be used.
+        """
+        solver = _quiet_solver(gap_frac, time_limit_s)
+        relaxed = fixed is not None
+        model = self._model(fixed)
+        if solver.passModel(model) == highspy.HighsStatus.kError:
+            raise SolveError("HiGHS refused the model")
+        if solver.run() == highspy.HighsStatus.kError:
+            raise SolveError("HiGHS failed while solving")
+        return self._answer(solver, linear=relaxed or not np.concatenate(self._whole).any())
+
+    def _model(self, fixed: tuple[IntArray, FloatArray] | None) -> highspy.HighsLp:
+        """The programme in HiGHS's own form."""
+        low, high = np.concatenate(self._low), np.concatenate(self._high)
+        whole = np.concatenate(self._whole)
+        if fixed is not None:
+            fixed_columns, values = fixed
+            low[fixed_columns] = high[fixed_columns] = values
+            whole = np.zeros_like(whole)
+        rows, columns, factors = (np.concatenate(part) for part in zip(*self._entries, strict=True))
+        matrix = sparse.csc_matrix((factors, (rows, columns)), shape=(self.rows, self.columns))
+        model = highspy.HighsLp()
+        model.num_col_, model.num_row_ = self.columns, self.rows
+        cost = np.concatenate(self._cost)
+        for columns, further in self._further_cost:
+            cost[columns] += further
+        model.col_cost_ = cost
+        model.col_lower_, model.col_upper_ = low, high
+        model.row_lower_ = np.concatenate(self._row_low)
+        model.row_upper_ = np.concatenate(self._row_high)
+        model.offset_ = self.offset
+        model.a_matrix_.format_ = highspy.MatrixFormat.kColwise
+        model.a_matrix_.start_ = matrix.indptr
+        model.a_matrix_.index_ = matrix.indices
+        model.a_matrix_.value_ = matrix.data
+        if whole.any():
+            kinds = (highspy.HighsVarType.kContinuous, highspy.HighsVarType.kInteger)
+            model.integrality_ = [kinds[int(is_whole)] for is_whole in whole]
+        return model
+
+    @staticmethod
+    def _answer(solver: highspy.Highs, *, linear: bool) -> Answer:
+        """Solution and bound, or an error that says what HiGHS said."""
+        status = solver.getModelStatus()
+        info = solver.getInfo()
+        usable = {highspy.HighsModelStatus.kOptimal, highspy.HighsModelStatus.kTimeLimit}
+        if status not in usable or not np.isfinite(info.objective_function_value):
+            raise SolveError(f"HiGHS ended with «{solver.modelStatusToString(status)}»")
+        if linear and status != highspy.HighsModelStatus.kOptimal:
+            raise SolveError("HiGHS reached its time limit in a linear programme")
+        solution = solver.getSolution()
+        objective = float(info.objective_function_value)
+        return Answer(
+            values=np.asarray(solution.col_value),
+            objective=objective,
+            bound=objective if linear else float(info.mip_dual_bound),
+            row_duals=np.asarray(solution.row_dual),
+        )
+
+
+def _quiet_solver(gap_frac: float, time_limit_s: float) -> highspy.Highs:
+    """HiGHS with the settings under which the same input gives the same answer."""
+    solver = highspy.Highs()
+    for name, value in (
+        ("output_flag", False),
+        ("threads", 1),
+        ("random_seed", 0),
+        ("mip_rel_gap", gap_frac),
+        ("time_limit", time_limit_s),
+    ):
+        solver.setOptionValue(name, value)
+    return solver

@@ -1,0 +1,168 @@
+"""From the values of a solved year to the columns of `Schedule.hourly`."""
+
+import numpy as np
+import pandas as pd
+
+from planner.arrays import BoolArray, FloatArray
+from planner.dispatch.commitment import starts_of
+from planner.dispatch.program import Answer
+from planner.dispatch.window import Window
+from planner.dispatch.year_program import GRADES, Columns, WindowProgram
+
+#: Columns of the exhaust's shares by path name.
+SHARE_COLUMNS = {
+    "hot gas": "share_hot_gas_frac",
+    "steam, then water": "share_steam_then_water_frac",
+    "water only": "share_water_only_frac",
+}
+
+#: Solver noise below this share of a column's largest value is taken for zero.
+NOISE_FRAC = 1e-9
+
+
+def hourly_flows(
+    year: Window, built: WindowProgram, answer: Answer, on: BoolArray, index: pd.Index
+) -> pd.DataFrame:
+    """Every flow of a solved year.
+
+    Parameters
+    ----------
+    year : Window
+        All steps.
+    built : WindowProgram
+        The programme and its columns.
+    answer : Answer
+        Solved with the unit's state fixed.
+    on : array of bool, shape (steps,)
+        That state.
+    index : Index
+        Of the site's year.
+
+    Returns
+    -------
+    DataFrame, one row a step
+        Columns of `Schedule.hourly`.
+    """
+    columns, values = built.columns, answer.values
+    flows = {
+        "grid_import_kW": values[columns.grid_import],
+        "grid_export_kW": values[columns.grid_export],
+        **_unit_flows(year, columns, values, on),
+        **_supply_flows(year, columns, values),
+        **_prices(year, built, answer),
+    }
+    return pd.DataFrame({name: _clean(flow) for name, flow in flows.items()}, index=index)
+
+
+def _clean(flow: FloatArray) -> FloatArray:
+    """A flow without the solver's noise about zero."""
+    largest = float(np.abs(flow).max(initial=0.0))
+    return np.where(np.abs(flow) <= NOISE_FRAC * largest, 0.0, flow)
+
+
+def _unit_flows(
+    year: Window, columns: Columns, values: FloatArray, on: BoolArray
+) -> dict[str, FloatArray]:
+    """State, power, fuel and heat of the unit."""
+    zero = np.zeros(year.steps)
+    flows = {"unit_on": on.astype(np.float64), "unit_start": starts_of(on).astype(np.float64)}
+    unit = year.unit
+    if unit is None:
+        names = ("unit_power_kW", "unit_fuel_lhv_kW", "start_fuel_lhv_kW")
+        flows |= dict.fromkeys(names, zero)
+        shares = dict.fromkeys((*SHARE_COLUMNS.values(), "share_bypass_frac"), zero)
+        heats = {f"{kind}_{grade}_kW": zero for kind in ("unit", "dumped") for grade in GRADES}
+        return flows | shares | heats
+    segments_kW = np.column_stack([values[segment] for segment in columns.segments])
+    above_kW = segments_kW.sum(axis=1)
+    flows["unit_power_kW"] = unit.minimum_power_kW * on + above_kW
+    fuel_lhv_kW = unit.fuel_at_minimum_lhv_kW * on + (unit.fuel_slope_lhv * segments_kW).sum(axis=1)
+    flows["unit_fuel_lhv_kW"] = fuel_lhv_kW
+    flows["start_fuel_lhv_kW"] = starts_of(on) * (unit.start_fuel_lhv_kWh / year.step_h)
+    flows |= _shares(year, columns, values, fuel_lhv_kW)
+    return flows | _unit_heat(year, columns, values)
+
+
+def _shares(
+    year: Window, columns: Columns, values: FloatArray, fuel_lhv_kW: FloatArray
+) -> dict[str, FloatArray]:
+    """Share of the exhaust on each path, by the fuel that made it; the rest is bypassed."""
+    unit = year.unit
+    shares = {name: np.zeros(year.steps) for name in SHARE_COLUMNS.values()}
+    if unit is None:
+        return shares
+    burning = np.maximum(fuel_lhv_kW, 1e-9)
+    for name, part_on in columns.path_on.items():
+        parts = np.column_stack([values[part] for part in columns.path_segments[name]])
+        fuel = unit.fuel_at_minimum_lhv_kW * values[part_on]
+        fuel = fuel + (unit.fuel_slope_lhv * parts).sum(axis=1)
+        shares[SHARE_COLUMNS[name]] = np.where(fuel_lhv_kW > 0.0, fuel / burning, 0.0)
+    taken = sum(shares.values(), np.zeros(year.steps))
+    shares["share_bypass_frac"] = np.where(fuel_lhv_kW > 0.0, np.maximum(1.0 - taken, 0.0), 0.0)
+    return shares
+
+
+def _unit_heat(year: Window, columns: Columns, values: FloatArray) -> dict[str, FloatArray]:
+    """Heat that the paths yield, and what of it is not used."""
+    flows = {}
+    for grade in GRADES:
+        offered_kW = np.zeros(year.steps)
+        for path in year.paths:
+            if grade not in path.yield_at_minimum_kW:
+                continue
+            parts = np.column_stack([values[part] for part in columns.path_segments[path.name]])
+            offered_kW += path.yield_at_minimum_kW[grade] * values[columns.path_on[path.name]]
+            offered_kW += (path.yield_slope[grade] * parts).sum(axis=1)
+        used_kW = values[columns.used[grade]] if grade in columns.used else np.zeros(year.steps)
+        flows[f"unit_{grade}_kW"] = offered_kW
+        flows[f"dumped_{grade}_kW"] = np.maximum(offered_kW - used_kW, 0.0)
+    return flows
+
+
+def _supply_flows(year: Window, columns: Columns, values: FloatArray) -> dict[str, FloatArray]:
+    """Heaters, chillers and store."""
+    flows = {f"heater_{grade}_kW": np.zeros(year.steps) for grade in GRADES}
+    fuel_lhv_kW = np.full(year.steps, year.standing_fuel_lhv_kW)
+    for heater, (carrier, numbers) in zip(year.heaters, columns.heaters, strict=True):
+        flows[f"heater_{carrier}_kW"] = flows[f"heater_{carrier}_kW"] + values[numbers]
+        fuel_lhv_kW += heater.fuel_per_heat_lhv * values[numbers]
+    flows["heater_fuel_lhv_kW"] = fuel_lhv_kW
+    for name in ("electric_cooling_kW", "chiller_power_kW"):
+        flows[name] = np.zeros(year.steps)
+    for name in ("absorption_cooling_kW", "absorption_heat_kW"):
+        flows[name] = np.zeros(year.steps)
+    for chiller, numbers in zip(year.chillers, columns.chillers, strict=True):
+        electric = chiller.drive == "power"
+        cooling, drive = (
+            ("electric_cooling_kW", "chiller_power_kW")
+            if electric
+            else ("absorption_cooling_kW", "absorption_heat_kW")
+        )
+        flows[cooling] = flows[cooling] + values[numbers]
+        flows[drive] = flows[drive] + values[numbers] / chiller.cop
+    stored = {
+        "store_charge_kW": columns.charge,
+        "store_discharge_kW": columns.discharge,
+        "store_level_kWh": columns.level,
+    }
+    for name, place in stored.items():
+        flows[name] = np.zeros(year.steps) if place is None else values[place]
+    return flows
+
+
+def _prices(year: Window, built: WindowProgram, answer: Answer) -> dict[str, FloatArray]:
+    """Marginal price of power, its demand part apart, and of each grade of heat."""
+    step_h, duals = year.step_h, answer.row_duals
+    peak = np.zeros(year.steps)
+    for rows, steps in built.rows.peaks:
+        peak[steps] += duals[rows] / step_h
+    prices = {
+        "price_power_per_kWh": duals[built.rows.power] / step_h - peak,
+        "price_power_peak_per_kWh": peak,
+    }
+    for grade in GRADES:
+        rows_of = built.rows.heat.get(grade)
+        prices[f"price_{grade}_per_kWh"] = (
+            np.zeros(year.steps) if rows_of is None else duals[rows_of] / step_h
+        )
+    return prices
