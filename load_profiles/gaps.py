@@ -112,7 +112,7 @@ def bridge(values: FloatArray, *, longest: int) -> tuple[FloatArray, BoolArray]:
         True where bridged.
     """
     mask = within_runs(np.isnan(values), longest=longest)
-    if mask.all():
+    if not mask.any() or mask.all():
         return values, np.zeros(values.size, dtype=bool)
     return np.where(mask, _bridged(values), values), mask
 
@@ -128,7 +128,7 @@ def _check_share(
 ) -> None:
     """Refuse a year of which too much is missing."""
     share = float(missing.mean())
-    if share <= permitted_frac:
+    if share <= permitted_frac and not missing.all():
         return
     starts, lengths = runs_of(missing)
     longest = int(np.argmax(lengths))

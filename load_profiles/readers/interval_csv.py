@@ -11,7 +11,7 @@ from load_profiles.clock import SiteClock
 from load_profiles.declarations import IntervalMeter
 from load_profiles.faults import Fault, ProfileError
 from load_profiles.findings import Finding
-from load_profiles.readers.stamps import ReadStamps, read_stamps
+from load_profiles.readers.stamps import ReadStamps, read_stamps, year_faults
 from load_profiles.readers.text_table import TextTable, read_text_table
 from load_profiles.row_faults import row_faults
 
@@ -67,7 +67,7 @@ def read_interval_meter(meter: IntervalMeter, *, folder: Path, site: SiteClock) 
     values = table.numbers(meter.value_column, faults)
     faults += _negative_faults(table, values, meter.value_column)
     faults += _interval_faults(table, stamps, meter.interval_minutes)
-    faults += _year_faults(table, stamps, site, meter.stamp_column)
+    faults += year_faults(table, stamps, site, meter.stamp_column)
     if faults:
         raise ProfileError(tuple(faults))
     power_kW = values[stamps.places]
@@ -122,18 +122,6 @@ def _interval_faults(table: TextTable, stamps: ReadStamps, interval_minutes: int
 def _rows_with(table: TextTable, places: IntArray, came: str, must: str) -> list[Fault]:
     """The same fault in several rows."""
     return row_faults(table.file, table.rows[places].tolist(), [came] * places.size, must)
-
-
-def _year_faults(
-    table: TextTable, stamps: ReadStamps, site: SiteClock, stamp_column: str
-) -> list[Fault]:
-    """A file of another year."""
-    inside = (stamps.seconds >= 0) & (stamps.seconds < site.hours * 3600)
-    if inside.any() or stamps.seconds.size == 0:
-        return []
-    cells = table.columns[stamp_column]
-    came = f"{cells[stamps.places[0]]} to {cells[stamps.places[-1]]}"
-    return [Fault(table.file, came, f"must cover {site.year}, the study's year")]
 
 
 def _merged(

@@ -84,6 +84,35 @@ def read_stamps(
     return ReadStamps(site.seconds(kept), places[~read.missing], findings)
 
 
+def year_faults(
+    table: TextTable, stamps: ReadStamps, site: SiteClock, stamp_column: str
+) -> list[Fault]:
+    """A file none of whose rows is of the site's year.
+
+    Parameters
+    ----------
+    table : TextTable
+        Rows as written.
+    stamps : ReadStamps
+        When they begin.
+    site : SiteClock
+        Zone and year.
+    stamp_column : str
+        Header of the stamps.
+
+    Returns
+    -------
+    list of Fault
+        Empty where a row is, and where no stamp could be read at all.
+    """
+    inside = (stamps.seconds >= 0) & (stamps.seconds < site.hours * 3600)
+    if inside.any() or stamps.places.size == 0:
+        return []
+    cells = table.columns[stamp_column]
+    came = f"{cells[stamps.places[0]]} to {cells[stamps.places[-1]]}"
+    return [Fault(table.file, came, f"must cover {site.year}, the study's year")]
+
+
 def _parsed(cells: list[str], stamp_format: str) -> pd.DatetimeIndex:
     """Stamps as written; not a time where they do not have the form."""
     text = pd.Series(cells, dtype="str")

@@ -12,7 +12,7 @@ from load_profiles.declarations import WeatherFile
 from load_profiles.faults import Fault, ProfileError
 from load_profiles.findings import Finding
 from load_profiles.gaps import bridge
-from load_profiles.readers.stamps import read_stamps
+from load_profiles.readers.stamps import read_stamps, year_faults
 from load_profiles.readers.text_table import TextTable, read_text_table
 from load_profiles.row_faults import row_faults
 from load_profiles.runs import runs_of
@@ -77,10 +77,8 @@ def read_weather(
     stamps = read_stamps(table, weather, site, interval_s=3600, faults=faults)
     hour, notes = hours_of_year(stamps.seconds, site, table.file)
     inside = (hour >= 0) & (hour < site.hours)
-    if stamps.seconds.size and not inside.any():
-        cells = table.columns[weather.stamp_column]
-        came = f"{cells[stamps.places[0]]} to {cells[stamps.places[-1]]}"
-        faults.append(Fault(table.file, came, f"must cover {site.year}, the study's year"))
+    if not inside.any():
+        faults += year_faults(table, stamps, site, weather.stamp_column)
         raise ProfileError(tuple(faults))
     series: dict[str, FloatArray] = {}
     findings: list[Finding] = [*stamps.findings, *notes]

@@ -4,11 +4,14 @@ from collections.abc import Callable
 from pathlib import Path
 
 import pytest
+from hypothesis import given, settings
+from hypothesis import strategies as st
 
 from load_profiles import ProfileError
 from load_profiles.clock import SiteClock
-from load_profiles.declarations import IntervalMeter
+from load_profiles.declarations import IntervalMeter, WeatherFile
 from load_profiles.readers.interval_csv import read_interval_meter
+from load_profiles.readers.weather_csv import read_weather
 from load_profiles.row_faults import row_faults
 from tests.load_profiles.known_year import Export, known_power_kW
 
@@ -280,3 +283,43 @@ def test_spoilt_file_never_ends_in_a_traceback(
     (tmp_path / "meter.csv").write_bytes(spoil(text("time,power_kW", *rows)))
 
     assert all(line.startswith("meter.csv") for line in refusal(tmp_path))
+
+
+@settings(max_examples=40, deadline=None)
+@given(
+    place=st.integers(0, 4000),
+    length=st.integers(0, 300),
+    junk=st.binary(max_size=40),
+    clock=st.sampled_from(["local", "standard", "utc"]),
+    marks=st.sampled_from(["start", "end"]),
+)
+def test_mutilated_file_is_read_or_refused(
+    tmp_path_factory: pytest.TempPathFactory,
+    *,
+    place: int,
+    length: int,
+    junk: bytes,
+    clock: str,
+    marks: str,
+) -> None:
+    """Whatever bytes take the place of others, each reader reads the file or refuses it."""
+    folder = tmp_path_factory.mktemp("mutilated")
+    days = ("2025-03-29", "2025-03-30", "2025-10-25", "2025-10-26", "2025-12-31")
+    rows = [f"{day} {hour:02d}:00,{hour}" for day in days for hour in range(24)]
+    raw = text("time,power_kW", *rows)
+    (folder / "meter.csv").write_bytes(raw[:place] + junk + raw[place + length :])
+    layout = {"file": "meter.csv", "clock": clock, "stamp_marks": marks}
+    meter = METER.model_copy(update={**layout, "interval_minutes": 60})
+    column = "power_kW"
+    weather = WeatherFile.model_validate(
+        {**layout, "temperature_column": column, "humidity_column": column}
+    )
+
+    for read in (
+        lambda: read_interval_meter(meter, folder=folder, site=BERLIN),
+        lambda: read_weather(weather, folder=folder, site=BERLIN, altitude_m=0.0),
+    ):
+        try:
+            read()
+        except ProfileError as error:
+            assert error.faults  # noqa: PT017 -- reading is as good an answer as a refusal
