@@ -1,0 +1,127 @@
+"""One week, step by step: what carries a demand, stacked, and the demand as a line."""
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+
+import numpy as np
+import numpy.typing as npt
+
+from reports.charts.drawing import Drawing, text_width_mm
+from reports.charts.palette import GREY, HAIR, INK, letters_on
+from reports.charts.scales import Scale, left_axis, rounded_range
+
+Array = npt.NDArray[np.float64]
+
+WIDTH, LEFT, RIGHT = 126.0, 9.0, 126.0
+TOP, PLOT = 6.0, 27.0
+LEAST_LABEL_MM = 3.0
+
+
+@dataclass(frozen=True)
+class Band:
+    """One part of the stack.
+
+    Parameters
+    ----------
+    name : str
+        For its label.
+    values_kW : array, shape (steps,) [kW]
+        At least zero.
+    colour : str
+        Of the area.
+    """
+
+    name: str
+    values_kW: Array
+    colour: str
+
+
+def draw_week(
+    bands: Sequence[Band],
+    demand_kW: Array,
+    days: Sequence[str],
+    *,
+    below: Band | None = None,
+    what: str,
+) -> str:
+    """Draw the figure.
+
+    Parameters
+    ----------
+    bands : sequence of Band
+        From zero upwards.
+    demand_kW : array, shape (steps,) [kW]
+        Drawn as a line.
+    days : sequence of str
+        Seven names.
+    below : Band, optional
+        Drawn downwards from zero: what leaves the site.
+    what : str
+        What the axis counts.
+
+    Returns
+    -------
+    str
+        SVG.
+    """
+    bands = [band for band in bands if float(band.values_kW.max()) > 0.0]
+    stack = np.sum([band.values_kW for band in bands], axis=0) if bands else demand_kW
+    lowest = -float(below.values_kW.max()) if below is not None else 0.0
+    low, high = rounded_range(lowest / 1e3, max(float(stack.max()), float(demand_kW.max()), 1.0) / 1e3, 4)
+    y, x = Scale(low, high, TOP + PLOT, TOP), Scale(0.0, len(demand_kW), LEFT, RIGHT)
+    drawing = Drawing(WIDTH, TOP + PLOT + 4.4)
+    drawing.text(0.0, 2.6, f"MW {what}", fill=GREY)
+    left_axis(drawing, y, LEFT, most=4)
+    unnamed = []
+    lower = np.zeros(len(demand_kW))
+    for band in bands:
+        upper = lower + band.values_kW / 1e3
+        drawing.area(_steps(upper, x, y), _steps(lower, x, y), band.colour)
+        if not _named(drawing, band, lower, upper, x, y):
+            unnamed.append((band.colour, band.name))
+        lower = upper
+    if below is not None and lowest < 0.0:
+        drawing.area(_steps(0.0 * lower, x, y), _steps(-below.values_kW / 1e3, x, y), below.colour)
+        unnamed.append((below.colour, below.name))
+    drawing.polyline(_steps(demand_kW / 1e3, x, y), stroke=INK, width_pt=0.8)
+    _day_axis(drawing, x, y, days)
+    drawing.swatches(34.0, 2.6, unnamed)
+    drawing.line((RIGHT - 18.0, 1.7), (RIGHT - 13.0, 1.7), stroke=INK, width_pt=0.8)
+    drawing.text(RIGHT - 12.0, 2.6, "demand", fill=GREY)
+    return drawing.svg()
+
+
+def _steps(values: Array, x: Scale, y: Scale) -> list[tuple[float, float]]:
+    """A line that keeps each value for its whole step."""
+    points = []
+    for place, value in enumerate(values):
+        points += [(x(place), y(float(value))), (x(place + 1), y(float(value)))]
+    return points
+
+
+def _day_axis(drawing: Drawing, x: Scale, y: Scale, days: Sequence[str]) -> None:
+    """Zero line, days and their names."""
+    foot = TOP + PLOT
+    drawing.line((LEFT, y(0.0)), (RIGHT, y(0.0)), stroke=INK, width_pt=0.6)
+    width = (RIGHT - LEFT) / len(days)
+    for place, name in enumerate(days):
+        left = LEFT + place * width
+        if place:
+            drawing.line((left, TOP), (left, foot), stroke=HAIR)
+        drawing.text(left + width / 2, foot + 3.6, name, fill=GREY, anchor="middle")
+
+
+def _named(drawing: Drawing, band: Band, lower: Array, upper: Array, x: Scale, y: Scale) -> bool:
+    """Write a band's name where it is thickest, if it is thick enough there."""
+    span = max(int(np.ceil((text_width_mm(band.name) + 2.0) / (x(1.0) - x(0.0)))), 1)
+    if span >= len(lower):
+        return False
+    floors = np.array([lower[i : i + span].max() for i in range(len(lower) - span)])
+    ceilings = np.array([upper[i : i + span].min() for i in range(len(lower) - span)])
+    place = int((ceilings - floors).argmax())
+    floor, ceiling = y(float(floors[place])), y(float(ceilings[place]))
+    if floor - ceiling < LEAST_LABEL_MM:
+        return False
+    middle = x(place + span / 2)
+    drawing.text(middle, (floor + ceiling) / 2 + 0.9, band.name, fill=letters_on(band.colour), anchor="middle", bold=True)
+    return True
