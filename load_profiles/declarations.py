@@ -108,7 +108,9 @@ class CoolingDegrees(Declaration):
 
     source: Literal["cooling_degrees"] = Field(description="Yearly cooling spread by the weather.")
     annual_cooling_MWh: Positive = Field(description="Cooling delivered in the year [MWh].")
-    base_temperature_degC: float = Field(16.0, description="Ambient above which cooling is needed.")
+    base_temperature_degC: float = Field(
+        16.0, description="Ambient above which cooling is needed [degC]."
+    )
     base_share_frac: Fraction = Field(
         0.2, description="Share that does not depend on the weather (server rooms, cold stores)."
     )

@@ -273,9 +273,13 @@ class Unit(Section):
     start_fuel_lhv_kWh: NonNegative = Field(description="Fuel of one start [kWh LHV].")
     minimum_up_h: Annotated[float, Field(ge=0, le=72)] = Field(4.0, description="Once on [h].")
     minimum_down_h: Annotated[float, Field(ge=0, le=72)] = Field(2.0, description="Once off [h].")
-    maintenance_per_run_hour: NonNegative = Field(0.0, description="[currency/h].")
-    maintenance_per_MWh: NonNegative = Field(0.0, description="[currency/MWh of net power].")
-    maintenance_per_start: NonNegative = Field(0.0, description="[currency/start].")
+    maintenance_per_run_hour: NonNegative = Field(
+        0.0, description="Upkeep by hour run [currency/h]."
+    )
+    maintenance_per_MWh: NonNegative = Field(
+        0.0, description="Upkeep by net power made [currency/MWh]."
+    )
+    maintenance_per_start: NonNegative = Field(0.0, description="Upkeep by start [currency/start].")
     overhaul_cost: NonNegative = Field(description="One overhaul, real [currency].")
     overhaul_every_run_hours: Positive = Field(description="Hours between overhauls [h].")
     planned_outage: tuple[PlannedOutage, ...] = Field(description="Inspections of the year.")
@@ -309,8 +313,8 @@ class Store(Section):
     """A hot-water store."""
 
     capacity_kWh: Positive = Field(description="Usable heat [kWh].")
-    maximum_charge_kW: Positive = Field(description="[kW].")
-    maximum_discharge_kW: Positive = Field(description="[kW].")
+    maximum_charge_kW: Positive = Field(description="Most heat into the store [kW].")
+    maximum_discharge_kW: Positive = Field(description="Most heat out of the store [kW].")
     loss_frac_per_h: Annotated[float, Field(ge=0, le=0.05)] = Field(
         0.0008, description="Share of the level lost each hour."
     )
