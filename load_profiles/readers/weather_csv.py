@@ -34,7 +34,7 @@ class WeatherYear:
 
     Parameters
     ----------
-    ambient_degC, relative_humidity_frac, pressure_kPa : arrays, shape (hours,)
+    ambient_degC, relative_humidity_frac, pressure_kPa : arrays, shape (hours,) [degC], [-], [kPa]
         Means over the hour.
     findings : tuple of Finding
         What was filled or computed.

@@ -49,7 +49,7 @@ def assemble(
         As cleaned.
     separate : Case
         The year without CHP.
-    cases, earned, explorations
+    cases, earned, explorations : sequence
         One an option, in the study's order.
 
     Returns

@@ -69,7 +69,18 @@ def _fault(detail: ErrorDetails, document: dict[str, Any]) -> Fault:
 
 
 def dotted(location: Location) -> str:
-    """Path as a reader counts: `option[1]` is the first option."""
+    """Path as a reader counts: `option[1]` is the first option.
+
+    Parameters
+    ----------
+    location : tuple of int and str
+        Steps into the document, counted from zero.
+
+    Returns
+    -------
+    str
+        The same, counted from one.
+    """
     path = ""
     for step in location:
         path += f"[{step + 1}]" if isinstance(step, int) else f".{step}" if path else str(step)
