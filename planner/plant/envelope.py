@@ -54,8 +54,10 @@ class UnitEnvelope:
         Burnt at each start before any power is delivered.
     minimum_up_h, minimum_down_h : float [h]
         Once on, once off, for at least so long.
-    cost_per_run_hour, cost_per_kWh, cost_per_start : float [currency/h], [currency/kWh], [currency/start]
+    cost_per_run_hour : float [currency/h]
         Maintenance and overhaul reserve, without fuel.
+    cost_per_kWh, cost_per_start : float [currency/kWh], [currency/start]
+        The same by net power made and by start.
     """
 
     name: str
