@@ -1,6 +1,6 @@
 """Efficiency of a year as dispatched, and the legal test of high efficiency."""
 
-from planner.outcome.published import published_rows
+from planner.data.published import published_rows
 from planner.plant.fuel import GasFuel
 from planner.results.records import Efficiency, EnergyYear
 from planner.study.sections import EmissionRules, HeatCarrier, Option

@@ -5,7 +5,7 @@ import math
 from dataclasses import dataclass
 
 from load_profiles import Fault, Finding
-from planner.outcome.published import published_rows
+from planner.data.published import published_rows
 from planner.plant.fuel import GasFuel
 from planner.study.sections import DataSheet
 from planner.study.study import Study

@@ -28,7 +28,7 @@ from tests.planner.market.small_study import (
     small_year,
 )
 
-METHANE = {"CH4": 1.0}
+METHANE = {"methane": 1.0}
 GJ_A_YEAR = 31_536.0
 
 

@@ -154,7 +154,7 @@ _SECTIONS: dict[str, Any] = {
         "import_limit_kW": 5000.0,
     },
     "gas_tariff": {"commodity_per_hhv_kWh": 0.03},
-    "fuel": {"composition_mol_frac": {"CH4": 1.0}, "supply_pressure_kPa_gauge": 2000.0},
+    "fuel": {"composition_mol_frac": {"methane": 1.0}, "supply_pressure_kPa_gauge": 2000.0},
     "option": (
         {
             "name": "One turbine",

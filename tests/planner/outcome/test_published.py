@@ -2,9 +2,9 @@
 
 import pytest
 
+from planner.data.published import published_rows
 from planner.outcome.efficiency import TESTS_FILE
 from planner.outcome.nox_limits import KW_PER_SIZE_UNIT, LIMITS_FILE, nox_limit
-from planner.outcome.published import published_rows
 from tests.planner.market.small_study import small_study
 
 CONFIDENCE = {"read in the source", "read in a secondary source", "from memory"}

@@ -1,4 +1,4 @@
-"""Published values that an outcome is held to: rows of the CSV files under `planner/data`."""
+"""Published values: rows of the CSV files beside this module, by key."""
 
 import csv
 from functools import cache
