@@ -39,7 +39,7 @@ UNITS = {
     "_lhv_kWh": "kWh LHV",
     "_frac_per_h": "",
     "kg_per_kWh": "kg/kWh",
-    "_price_per_kWh": "currency/kWh",
+    "price_per_kWh": "currency/kWh",
     "levy_per_kWh": "currency/kWh",
     "_per_hhv_kWh": "currency/kWh HHV",
     "_per_kW_month": "currency/kW and month",
