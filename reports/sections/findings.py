@@ -1,0 +1,48 @@
+"""Findings and defaults: what a reader must know about inputs and answer."""
+
+from typing import Any
+
+from reports.figures import Figures
+from reports.numbers import count
+from reports.results_folder import ResultsFolder
+from reports.wording import real_subscripts
+
+SEVERITIES = ("serious", "attention", "note")
+STAGES = {
+    "profiles": "Meters and weather",
+    "plant": "Plant",
+    "market": "Tariffs",
+    "dispatch": "Dispatch",
+    "outcome": "Outcome",
+    "explore": "Variants",
+}
+
+
+def findings(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
+    """Every finding, the gravest first, and every default used."""
+    found = sorted(results.facts["findings"], key=lambda f: SEVERITIES.index(f["severity"]))
+    serious = sum(f["severity"] == "serious" for f in found)
+    return {
+        "title": _title(len(found), serious),
+        "rows": [
+            {
+                "severity": f["severity"],
+                "stage": STAGES[f["stage"]],
+                "where": f["where"],
+                "what": real_subscripts(f["what"]),
+                "effect": real_subscripts(f["effect"]),
+                "advice": real_subscripts(f["advice"]),
+            }
+            for f in found
+        ],
+        "defaults": [(d["path"], d["value"], real_subscripts(d["meaning"])) for d in results.facts["defaults"]],
+    }
+
+
+def _title(total: int, serious: int) -> str:
+    """How many, and how grave."""
+    if not total:
+        return "Nothing was found that a reader must be told"
+    if not serious:
+        return f"{count(total, 'finding')}, none of them serious"
+    return f"{count(total, 'finding')}, {serious} serious"
