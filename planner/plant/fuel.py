@@ -1,4 +1,4 @@
-"""`GasFuel`: a gas by its composition; calorific values, air, carbon and flue gas follow from it."""
+"""`GasFuel`: a gas by its composition, and what follows for heat, air, carbon and flue gas."""
 
 import difflib
 import math

@@ -244,7 +244,7 @@ def weeks(site_year: SiteYear) -> Weeks:
         The Mondays of the weeks nearest to the mean of the coldest and of the hottest quarter.
     """
     local = site_year.local_time
-    monday = (local - pd.to_timedelta(local.weekday, unit="D")).date
+    monday = (local - pd.to_timedelta(local.day_of_week, unit="D")).date
     ambient_degC = site_year.hourly["ambient_degC"]
     by_week = ambient_degC.groupby(monday).agg(["mean", "count"])
     whole = by_week[by_week["count"] >= (WEEK_DAYS * 24 - 1) / site_year.step_h]["mean"]
