@@ -1,0 +1,435 @@
+"""Exhaust heat to steam and hot water: designed by pinch, run off design by conductances.
+
+A bank's conductance goes with the 0.6th power of the gas flow. The evaporator boils at the drum's
+temperature, so its gas falls towards it exponentially; economiser and water heater are counterflow.
+"""
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from planner.arrays import FloatArray
+from planner.constants import ZERO_CELSIUS_K, STANDARD_PRESSURE_kPa
+from planner.plant.gas import Mixture
+from planner.plant.steam import (
+    liquid_enthalpy_kJ_per_kg,
+    saturation_degC,
+    vapour_enthalpy_kJ_per_kg,
+)
+from planner.study.sections import Recovery, SteamSystem, WaterSystem
+
+#: Conductance over gas flow, as an exponent: common practice for finned tubes.
+FLOW_EXPONENT = 0.6
+
+#: Gas leaves the water heater this far above the returning water, at the design point.
+WATER_APPROACH_K = 25.0
+
+ITERATIONS = 40
+BISECTIONS = 60
+
+#: Water of the economiser stays this far below boiling, or steam forms in it.
+STEAMING_MARGIN_K = 1.0
+
+
+@dataclass(frozen=True)
+class GasFlow:
+    """Exhaust of some hours.
+
+    Parameters
+    ----------
+    gas : Mixture
+        Composition of each hour.
+    flow_kg_per_s, temperature_K : array, shape (hours,)
+        At the turbine's flange.
+    """
+
+    gas: Mixture
+    flow_kg_per_s: FloatArray
+    temperature_K: FloatArray
+
+    def cooled_to_kW(self, temperature_K: FloatArray | float) -> FloatArray:
+        """Heat that cooling to a temperature gives."""
+        cold = np.zeros_like(self.temperature_K) + temperature_K
+        drop = self.gas.enthalpy_kJ_per_kg(self.temperature_K) - self.gas.enthalpy_kJ_per_kg(cold)
+        return np.asarray(self.flow_kg_per_s * drop)
+
+    def after_kW(self, heat_kW: FloatArray) -> FloatArray:
+        """Temperature after giving up some heat."""
+        enthalpy = self.gas.enthalpy_kJ_per_kg(self.temperature_K) - heat_kW / self.flow_kg_per_s
+        return self.gas.temperature_at_enthalpy_K(enthalpy, self.temperature_K - 100.0)
+
+    def at(self, temperature_K: FloatArray) -> "GasFlow":
+        """The same gas, cooled to a temperature."""
+        return GasFlow(self.gas, self.flow_kg_per_s, temperature_K)
+
+
+@dataclass(frozen=True)
+class SteamState:
+    """Enthalpies of one steam system [kJ/kg], and what its feed costs.
+
+    Parameters
+    ----------
+    boiling_degC : float [degC]
+        At the drum.
+    steam, boiling, feed : float [kJ/kg]
+        Dry saturated steam, boiling water and feedwater.
+    blowdown_frac : float [-]
+        Over steam made.
+    site_per_steam : float [-]
+        Steam that reaches the site over steam made; the rest heats the deaerator.
+    useful_kJ_per_kg : float [kJ/kg]
+        Worth of steam at the site's valve over returned condensate and make-up.
+    """
+
+    boiling_degC: float
+    steam: float
+    boiling: float
+    feed: float
+    blowdown_frac: float
+    site_per_steam: float
+    useful_kJ_per_kg: float
+
+    @property
+    def useful_per_made_kJ_per_kg(self) -> float:
+        """Useful heat of a kilogram of steam made."""
+        return self.site_per_steam * self.useful_kJ_per_kg
+
+
+def steam_state(system: SteamSystem) -> SteamState:
+    """Enthalpies and deaerator of a steam system.
+
+    Parameters
+    ----------
+    system : SteamSystem
+        Pressure, condensate, make-up, feedwater and blowdown.
+
+    Returns
+    -------
+    SteamState
+        The deaerator takes live steam to bring condensate and make-up to the feedwater's
+        temperature; blowdown is made up cold.
+    """
+    pressure_kPa = system.pressure_kPa_gauge + STANDARD_PRESSURE_kPa
+    boiling_degC = saturation_degC(pressure_kPa)
+    steam = vapour_enthalpy_kJ_per_kg(pressure_kPa)
+    feed = liquid_enthalpy_kJ_per_kg(system.feedwater_degC, pressure_kPa)
+    returned = liquid_enthalpy_kJ_per_kg(system.condensate_degC)
+    fresh = liquid_enthalpy_kJ_per_kg(system.make_up_degC)
+    water = 1.0 + system.blowdown_frac
+    # Per kilogram of steam made: site steam x, deaerator steam 1 - x, returned r x, the rest
+    # fresh; the deaerator's balance (1 - x) steam + r x returned + fresh water = feed is linear.
+    r = system.condensate_return_frac
+    x = (steam + (water - 1.0) * fresh - water * feed) / (steam - r * returned - (1.0 - r) * fresh)
+    useful = steam - r * returned - (1.0 - r) * fresh
+    return SteamState(
+        boiling_degC=boiling_degC,
+        steam=steam,
+        boiling=liquid_enthalpy_kJ_per_kg(boiling_degC, pressure_kPa),
+        feed=feed,
+        blowdown_frac=system.blowdown_frac,
+        site_per_steam=float(np.clip(x, 0.0, 1.0)),
+        useful_kJ_per_kg=useful,
+    )
+
+
+@dataclass(frozen=True)
+class SteamBoiler:
+    """A heat-recovery steam generator of one pressure, designed.
+
+    Parameters
+    ----------
+    state : SteamState
+        Water side.
+    loss_frac : float [-]
+        Casing loss over heat given up.
+    feedwater_degC, approach_K : float
+        Water into and below boiling out of the economiser at the design point.
+    evaporator_kW_per_K, economiser_kW_per_K : float [kW/K]
+        Conductances at the design flow.
+    design_flow_kg_per_s : float [kg/s]
+        Gas at the design point.
+    """
+
+    state: SteamState
+    loss_frac: float
+    feedwater_degC: float
+    approach_K: float
+    evaporator_kW_per_K: float
+    economiser_kW_per_K: float
+    design_flow_kg_per_s: float
+
+
+@dataclass(frozen=True)
+class SteamRun:
+    """What a steam generator does in some hours; arrays of shape (hours,).
+
+    Parameters
+    ----------
+    steam_kg_per_s : array [kg/s]
+        Steam made, deaerator steam included.
+    after_evaporator_K, stack_K : array [K]
+        Gas between the banks and behind them.
+    steaming : array of bool
+        Whether the economiser boils.
+    """
+
+    steam_kg_per_s: FloatArray
+    after_evaporator_K: FloatArray
+    stack_K: FloatArray
+    steaming: np.ndarray
+
+
+def design_steam_boiler(
+    exhaust: GasFlow, system: SteamSystem, *, pinch_K: float, approach_K: float, loss_frac: float
+) -> SteamBoiler:
+    """Size a steam generator for one exhaust.
+
+    Parameters
+    ----------
+    exhaust : GasFlow
+        One hour: the design point.
+    system : SteamSystem
+        Water side.
+    pinch_K, approach_K : float [K]
+        Gas above boiling behind the evaporator; water below boiling behind the economiser.
+    loss_frac : float [-]
+        Casing loss over heat given up.
+
+    Returns
+    -------
+    SteamBoiler
+        With the conductances that the design needs.
+    """
+    state = steam_state(system)
+    boiling_K = state.boiling_degC + ZERO_CELSIUS_K
+    pinch_gas_K = np.array([boiling_K + pinch_K])
+    evaporator_kW = exhaust.cooled_to_kW(pinch_gas_K) * (1.0 - loss_frac)
+    leaving = liquid_enthalpy_kJ_per_kg(state.boiling_degC - approach_K)
+    steam = evaporator_kW / _evaporation(state, leaving)
+    economiser_kW = steam * (1.0 + state.blowdown_frac) * (leaving - state.feed)
+    behind = exhaust.at(pinch_gas_K)
+    stack_K = behind.after_kW(economiser_kW / (1.0 - loss_frac))
+    feed_K = system.feedwater_degC + ZERO_CELSIUS_K
+    return SteamBoiler(
+        state=state,
+        loss_frac=loss_frac,
+        feedwater_degC=system.feedwater_degC,
+        approach_K=approach_K,
+        evaporator_kW_per_K=_conductance(
+            evaporator_kW, exhaust.temperature_K - boiling_K, np.array([pinch_K])
+        ),
+        economiser_kW_per_K=_conductance(
+            economiser_kW, pinch_gas_K - (boiling_K - approach_K), stack_K - feed_K
+        ),
+        design_flow_kg_per_s=float(exhaust.flow_kg_per_s[0]),
+    )
+
+
+def run_steam_boiler(boiler: SteamBoiler, exhaust: GasFlow) -> SteamRun:
+    """Steam of a generator in some hours.
+
+    Parameters
+    ----------
+    boiler : SteamBoiler
+        Designed.
+    exhaust : GasFlow
+        Gas of each hour.
+
+    Returns
+    -------
+    SteamRun
+        Zero steam where the gas is no hotter than boiling.
+    """
+    state, kept = boiler.state, 1.0 - boiler.loss_frac
+    boiling_K = state.boiling_degC + ZERO_CELSIUS_K
+    relative = (exhaust.flow_kg_per_s / boiler.design_flow_kg_per_s) ** FLOW_EXPONENT
+    hot_K = np.maximum(exhaust.temperature_K, boiling_K + 1e-3)
+    gas = exhaust.at(hot_K)
+    after_K = np.full_like(hot_K, boiling_K) + 0.1 * (hot_K - boiling_K)
+    for _ in range(ITERATIONS):
+        capacity = gas.cooled_to_kW(after_K) / (hot_K - after_K) * kept
+        decay = np.exp(-boiler.evaporator_kW_per_K * relative / capacity)
+        moved = boiling_K + (hot_K - boiling_K) * decay
+        done = np.abs(moved - after_K).max() < 1e-9  # noqa: PLR2004 - a tolerance in K
+        after_K = moved
+        if done:
+            break
+    evaporator_kW = gas.cooled_to_kW(after_K) * kept
+    return _with_economiser(boiler, exhaust.at(after_K), evaporator_kW, relative)
+
+
+def _with_economiser(
+    boiler: SteamBoiler, behind: GasFlow, evaporator_kW: FloatArray, relative: FloatArray
+) -> SteamRun:
+    """Steam and stack with the economiser's preheating, found together."""
+    state, kept = boiler.state, 1.0 - boiler.loss_frac
+    feed_K = boiler.feedwater_degC + ZERO_CELSIUS_K
+    hottest_K = state.boiling_degC + ZERO_CELSIUS_K - STEAMING_MARGIN_K
+    span = hottest_K - feed_K
+    heat_per_K = (liquid_enthalpy_kJ_per_kg(hottest_K - ZERO_CELSIUS_K) - state.feed) / span
+    water_K = np.full_like(evaporator_kW, hottest_K - boiler.approach_K)
+    stack_K = behind.temperature_K - 30.0
+    for _ in range(ITERATIONS):
+        steam = evaporator_kW / _evaporation(state, state.feed + heat_per_K * (water_K - feed_K))
+        water = np.maximum(steam * (1.0 + state.blowdown_frac) * heat_per_K, 1e-12)
+        drop = np.maximum(behind.temperature_K - stack_K, 1e-6)
+        gas = np.maximum(behind.cooled_to_kW(stack_K) / drop * kept, 1e-12)
+        least = np.minimum(water, gas)
+        ntu = boiler.economiser_kW_per_K * relative / least
+        share = counterflow_effectiveness(ntu, least / np.maximum(water, gas))
+        heat_kW = share * least * (behind.temperature_K - feed_K)
+        reached_K = feed_K + heat_kW / water
+        moved_K = np.minimum(reached_K, hottest_K)
+        heat_kW = water * (moved_K - feed_K)
+        stack_K = behind.after_kW(heat_kW / kept)
+        done = np.abs(moved_K - water_K).max() < 1e-9  # noqa: PLR2004 - a tolerance in K
+        water_K = moved_K
+        if done:
+            break
+    return SteamRun(steam, behind.temperature_K, stack_K, reached_K > hottest_K)
+
+
+def counterflow_effectiveness(ntu: FloatArray, ratio: FloatArray) -> FloatArray:
+    r"""Effectiveness of a counterflow exchanger.
+
+    .. math:: \epsilon = \frac{1 - e^{-N(1-C)}}{1 - C e^{-N(1-C)}}
+
+    Parameters
+    ----------
+    ntu : array [-]
+        Conductance over the smaller capacity flow.
+    ratio : array [-]
+        Smaller over larger capacity flow, 0 to 1.
+
+    Returns
+    -------
+    array [-]
+        Heat over the most that could be passed.
+
+    Examples
+    --------
+    >>> print(f"{counterflow_effectiveness(np.array([2.0]), np.array([0.5]))[0]:.4f}")
+    0.7746
+    """
+    near_one = np.minimum(ratio, 1.0 - 1e-9)
+    decay = np.exp(-np.asarray(ntu) * (1.0 - near_one))
+    return np.asarray((1.0 - decay) / (1.0 - near_one * decay))
+
+
+@dataclass(frozen=True)
+class WaterHeater:
+    """A bank that heats the network's return to its flow temperature, designed.
+
+    Parameters
+    ----------
+    flow_degC, return_degC : float [degC]
+        Of the network.
+    loss_frac : float [-]
+        Casing loss over heat given up.
+    coldest_stack_degC : float [degC]
+        Gas is cooled no further.
+    conductance_kW_per_K : float [kW/K]
+        At the design flow.
+    design_flow_kg_per_s : float [kg/s]
+        Gas at the design point.
+    """
+
+    flow_degC: float
+    return_degC: float
+    loss_frac: float
+    coldest_stack_degC: float
+    conductance_kW_per_K: float
+    design_flow_kg_per_s: float
+
+
+def design_water_heater(
+    exhaust: GasFlow, system: WaterSystem, recovery: Recovery
+) -> WaterHeater | None:
+    """Size a water heater for one gas.
+
+    Parameters
+    ----------
+    exhaust : GasFlow
+        One hour: the design point, behind whatever stands before the bank.
+    system : WaterSystem
+        The network.
+    recovery : Recovery
+        Losses and the coldest stack.
+
+    Returns
+    -------
+    WaterHeater or None
+        None where the gas is too cold to reach the flow temperature.
+    """
+    coldest_degC = max(recovery.minimum_stack_degC, system.return_degC + WATER_APPROACH_K)
+    hot_degC = float(exhaust.temperature_K[0]) - ZERO_CELSIUS_K
+    if hot_degC <= max(coldest_degC, system.flow_degC) + 1.0:
+        return None
+    heat_kW = exhaust.cooled_to_kW(coldest_degC + ZERO_CELSIUS_K) * (1.0 - recovery.loss_frac)
+    conductance = _conductance(
+        heat_kW,
+        np.array([hot_degC - system.flow_degC]),
+        np.array([coldest_degC - system.return_degC]),
+    )
+    return WaterHeater(
+        flow_degC=system.flow_degC,
+        return_degC=system.return_degC,
+        loss_frac=recovery.loss_frac,
+        coldest_stack_degC=recovery.minimum_stack_degC,
+        conductance_kW_per_K=conductance,
+        design_flow_kg_per_s=float(exhaust.flow_kg_per_s[0]),
+    )
+
+
+def run_water_heater(heater: WaterHeater, exhaust: GasFlow) -> tuple[FloatArray, FloatArray]:
+    """Heat of a water heater in some hours.
+
+    Parameters
+    ----------
+    heater : WaterHeater
+        Designed.
+    exhaust : GasFlow
+        Gas before the bank.
+
+    Returns
+    -------
+    tuple of array, shape (hours,) [kW] and array [K]
+        Useful heat, and the stack. The water's flow follows so that it leaves at the flow
+        temperature; the stack is where the bank passes what the gas gives.
+    """
+    flow_K = heater.flow_degC + ZERO_CELSIUS_K
+    return_K = heater.return_degC + ZERO_CELSIUS_K
+    relative = (exhaust.flow_kg_per_s / heater.design_flow_kg_per_s) ** FLOW_EXPONENT
+    hot_K = exhaust.temperature_K
+    usable = hot_K > flow_K + 1.0
+    low_K = np.full_like(hot_K, return_K + 1e-3)
+    high_K = np.maximum(hot_K - 1e-3, low_K)
+    mean_capacity = exhaust.cooled_to_kW(return_K + 30.0) / np.maximum(hot_K - return_K - 30.0, 1.0)
+    for _ in range(BISECTIONS):
+        middle_K = 0.5 * (low_K + high_K)
+        given = mean_capacity * (hot_K - middle_K) * (1.0 - heater.loss_frac)
+        difference = _log_mean(np.maximum(hot_K - flow_K, 1.0), middle_K - return_K)
+        colder = given < heater.conductance_kW_per_K * relative * difference
+        high_K, low_K = np.where(colder, middle_K, high_K), np.where(colder, low_K, middle_K)
+    stack_K = np.maximum(0.5 * (low_K + high_K), heater.coldest_stack_degC + ZERO_CELSIUS_K)
+    stack_K = np.where(usable, np.minimum(stack_K, hot_K), hot_K)
+    return exhaust.cooled_to_kW(stack_K) * (1.0 - heater.loss_frac), stack_K
+
+
+def _evaporation(state: SteamState, entering: FloatArray | float) -> FloatArray:
+    """Heat in the evaporator for a kilogram of steam, its blowdown included."""
+    per_steam = state.steam - entering
+    return np.asarray(per_steam + state.blowdown_frac * (state.boiling - entering))
+
+
+def _log_mean(one: FloatArray, other: FloatArray) -> FloatArray:
+    """Logarithmic mean of two temperature differences."""
+    other = np.maximum(other, 1e-6)
+    equal = np.abs(one - other) < 1e-6 * one
+    logarithm = np.log(np.where(equal, 2.0, one / other))
+    return np.where(equal, one, (one - other) / logarithm)
+
+
+def _conductance(heat_kW: FloatArray, one_K: FloatArray, other_K: FloatArray) -> float:
+    """Conductance that passes a heat between two temperature differences."""
+    return float((heat_kW / _log_mean(one_K, other_K))[0])

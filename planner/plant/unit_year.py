@@ -1,0 +1,340 @@
+"""One machine through one year: exact at any power, and as piecewise-linear functions of it."""
+
+from dataclasses import dataclass, replace
+
+import numpy as np
+import pandas as pd
+
+from load_profiles import SiteYear
+from planner.arrays import BoolArray, FloatArray
+from planner.plant.envelope import ExhaustPath, UnitEnvelope
+from planner.plant.exhaust_paths import SHARE_COLUMNS, HeatPaths, design_paths
+from planner.plant.fuel import GasFuel
+from planner.plant.gas_compressor import compression_kJ_per_kg
+from planner.plant.load import NetMachine
+from planner.plant.running import Ambient, RunningPoint, ambient
+from planner.plant.turbine import GasTurbine, calibrate
+from planner.study.sections import Option, Unit
+from planner.study.study import Study
+
+#: Cap of generator or gearbox over the sheet's power where the sheet is silent: common practice.
+USUAL_CAP = 1.15
+
+#: Powers between minimum and maximum at which the pieces meet, as shares of the span.
+NODES = (0.0, 0.5, 1.0)
+
+GRADES = ("steam", "hot_water", "hot_gas")
+
+
+@dataclass(frozen=True)
+class UnitYear:
+    """A machine with its recovery, calibrated and placed in the site's weather.
+
+    Parameters
+    ----------
+    unit : Unit
+        As stated.
+    turbine : GasTurbine
+        Calibrated.
+    machine : NetMachine
+        In the year's weather.
+    paths : HeatPaths
+        Recovery.
+    available : array of bool, shape (steps,)
+        False in planned outages.
+    """
+
+    unit: Unit
+    turbine: GasTurbine
+    machine: NetMachine
+    paths: HeatPaths
+    available: BoolArray
+
+    @property
+    def minimum_load_frac(self) -> float:
+        """Highest of mechanical minimum and the guarantee's lower end."""
+        return max(self.unit.sheet.minimum_load_frac, self.unit.sheet.nox.from_load_frac)
+
+    def aged(self, point: RunningPoint) -> RunningPoint:
+        """The point as fouling and ageing leave it, on average over the life.
+
+        Flows and power fall alike; the further fuel for each kilowatt-hour leaves with the exhaust,
+        so that the energy balance stays closed.
+        """
+        kept = 1.0 - self.unit.average_power_loss_frac
+        fuel = point.fuel_kg_per_s * kept
+        further_kW = self.unit.average_fuel_rise_frac * fuel * self.turbine.fuel.lhv_kJ_per_kg
+        flow = point.exhaust_kg_per_s * kept
+        enthalpy = point.gas.enthalpy_kJ_per_kg(point.exhaust_K) + further_kW / flow
+        return replace(
+            point,
+            terminal_power_kW=point.terminal_power_kW * kept,
+            fuel_kg_per_s=fuel * (1.0 + self.unit.average_fuel_rise_frac),
+            exhaust_kg_per_s=flow,
+            exhaust_K=point.gas.temperature_at_enthalpy_K(enthalpy, point.exhaust_K),
+        )
+
+    def clean_net_kW(self, net_kW: FloatArray) -> FloatArray:
+        """Net power of the clean machine that an aged net power comes from.
+
+        The auxiliaries stay; the gas compressor's part is near enough proportional to power for
+        the exact model to be asked at the clean power that ages to the wanted one.
+        """
+        kept = 1.0 - self.unit.average_power_loss_frac
+        return np.asarray((net_kW + (1.0 - kept) * self.machine.auxiliary_kW) / kept)
+
+    def fuel_lhv_kW(self, aged: RunningPoint) -> FloatArray:
+        """Fuel of an aged point."""
+        return np.asarray(aged.fuel_kg_per_s * self.turbine.fuel.lhv_kJ_per_kg)
+
+    def full_load(self) -> RunningPoint:
+        """Full load of the clean machine in every hour."""
+        return self.machine.full_load()
+
+    def exact(self, net_kW: FloatArray, full: RunningPoint) -> RunningPoint:
+        """The aged machine at a net power."""
+        return self.aged(self.machine.at_net_power(self.clean_net_kW(net_kW), full))
+
+
+def unit_year(study: Study, option: Option, site_year: SiteYear, fuel: GasFuel) -> UnitYear:
+    """Calibrate an option's machine and place it in a site's year.
+
+    Parameters
+    ----------
+    study : Study
+        Site, grades of heat and fuel supply.
+    option : Option
+        Machine and recovery.
+    site_year : SiteYear
+        Weather.
+    fuel : GasFuel
+        The gas.
+
+    Returns
+    -------
+    UnitYear
+        Exact model of every hour.
+    """
+    unit, hourly = option.unit, site_year.hourly
+    turbine = calibrate(unit.sheet, fuel)
+    pressure_kPa = hourly["pressure_kPa"].to_numpy(dtype=np.float64)
+    hours = ambient(
+        hourly["ambient_degC"].to_numpy(dtype=np.float64),
+        hourly["relative_humidity_frac"].to_numpy(dtype=np.float64),
+        pressure_kPa,
+        inlet_loss_kPa=unit.inlet_loss_kPa,
+        exhaust_loss_kPa=unit.exhaust_loss_kPa,
+    )
+    machine = net_machine(study, unit, turbine, hours, fuel, float(pressure_kPa.mean()))
+    bare = UnitYear(
+        unit,
+        turbine,
+        machine,
+        HeatPaths(study.heat, option.recovery, None, None, None),
+        _available(unit, site_year),
+    )
+    return replace(
+        bare, paths=design_paths(study.heat, option.recovery, _design_point(bare, study, fuel))
+    )
+
+
+def net_machine(
+    study: Study,
+    unit: Unit,
+    turbine: GasTurbine,
+    hours: Ambient,
+    fuel: GasFuel,
+    ambient_kPa: float,
+) -> NetMachine:
+    """A machine with what lies between its terminals and the busbar.
+
+    Parameters
+    ----------
+    study : Study
+        Its gas pressure.
+    unit : Unit
+        Auxiliaries and caps.
+    turbine : GasTurbine
+        Calibrated.
+    hours : Ambient
+        Air of each hour.
+    fuel : GasFuel
+        The gas.
+    ambient_kPa : float [kPa]
+        Air pressure at the gas compressor.
+
+    Returns
+    -------
+    NetMachine
+        Ready to run.
+    """
+    cap_kW = unit.sheet.generator_limit_kW or USUAL_CAP * unit.sheet.power_kW
+    return NetMachine(
+        turbine=turbine,
+        hours=hours,
+        auxiliary_kW=unit.auxiliary_kW,
+        compression_kJ_per_kg=compression_kJ_per_kg(
+            fuel,
+            supply_kPa_gauge=study.fuel.supply_pressure_kPa_gauge,
+            needed_kPa_gauge=unit.sheet.fuel_gas_pressure_kPa_gauge,
+            ambient_kPa=ambient_kPa,
+        ),
+        terminal_limit_kW=cap_kW,
+    )
+
+
+def _design_point(year: UnitYear, study: Study, fuel: GasFuel) -> RunningPoint:
+    """Aged full load at the sheet's ambient and the site's mean pressure."""
+    pressure_kPa = float(year.machine.hours.inlet_kPa.mean()) + year.unit.inlet_loss_kPa
+    sheet = year.unit.sheet
+    hour = ambient(
+        np.array([sheet.ambient_degC]),
+        np.array([sheet.relative_humidity_frac]),
+        np.array([pressure_kPa]),
+        inlet_loss_kPa=year.unit.inlet_loss_kPa,
+        exhaust_loss_kPa=year.unit.exhaust_loss_kPa,
+    )
+    one = net_machine(study, year.unit, year.turbine, hour, fuel, pressure_kPa)
+    return year.aged(one.full_load())
+
+
+def _available(unit: Unit, site_year: SiteYear) -> BoolArray:
+    """False on the local days of planned outages."""
+    days = pd.DatetimeIndex(site_year.local_time.tz_localize(None)).normalize()
+    stopped = np.zeros(len(days), dtype=bool)
+    for outage in unit.planned_outage:
+        first = pd.Timestamp(outage.first_day)
+        stopped |= (days >= first) & (days < first + pd.Timedelta(days=outage.days))
+    return ~stopped
+
+
+def unit_envelope(
+    year: UnitYear, costs: tuple[float, float, float]
+) -> tuple[UnitEnvelope, RunningPoint]:
+    """The machine as piecewise-linear functions of net power, exact where the pieces meet.
+
+    Parameters
+    ----------
+    year : UnitYear
+        Exact model.
+    costs : tuple of float [currency]
+        By run hour, by kWh and by start, without fuel.
+
+    Returns
+    -------
+    tuple of UnitEnvelope and RunningPoint
+        For the dispatch, and the clean machine's full load, from which exact points are sought.
+    """
+    full = year.full_load()
+    aged_full = year.aged(full)
+    maximum_kW = year.machine.net_kW(aged_full)
+    minimum_kW = year.minimum_load_frac * maximum_kW
+    nodes_kW = [minimum_kW + share * (maximum_kW - minimum_kW) for share in NODES]
+    points = [*(year.exact(node, full) for node in nodes_kW[:-1]), aged_full]
+    fuels = [year.fuel_lhv_kW(point) for point in points]
+    yields = [year.paths.yields_kW(point, year.machine.hours) for point in points]
+    widths = np.column_stack([b - a for a, b in zip(nodes_kW, nodes_kW[1:], strict=False)])
+    per_hour, per_kWh, per_start = costs
+    envelope = UnitEnvelope(
+        name=year.unit.name,
+        available=year.available & (maximum_kW > 0.0),
+        minimum_power_kW=minimum_kW,
+        maximum_power_kW=maximum_kW,
+        segment_power_kW=widths,
+        fuel_at_minimum_lhv_kW=fuels[0],
+        fuel_slope_lhv=convex_slopes(_slopes(fuels, widths), widths),
+        paths=tuple(_path(name, yields, widths) for name in year.paths.names),
+        start_fuel_lhv_kWh=year.unit.start_fuel_lhv_kWh,
+        minimum_up_h=year.unit.minimum_up_h,
+        minimum_down_h=year.unit.minimum_down_h,
+        cost_per_run_hour=per_hour,
+        cost_per_kWh=per_kWh,
+        cost_per_start=per_start,
+    )
+    return envelope, full
+
+
+def _path(
+    name: str, yields: list[dict[str, dict[str, FloatArray]]], widths: FloatArray
+) -> ExhaustPath:
+    """A path's heat at minimum power and its slopes."""
+    grades = yields[0][name]
+    return ExhaustPath(
+        name=name,
+        yield_at_minimum_kW=dict(grades),
+        yield_slope={
+            grade: _slopes([at_node[name][grade] for at_node in yields], widths)
+            for grade in grades
+        },
+    )
+
+
+def _slopes(at_nodes: list[FloatArray], widths: FloatArray) -> FloatArray:
+    """Rise over width of each piece, shape (steps, segments)."""
+    rises = np.column_stack([b - a for a, b in zip(at_nodes, at_nodes[1:], strict=False)])
+    return np.divide(rises, widths, out=np.zeros_like(rises), where=widths > 0.0)
+
+
+def convex_slopes(slopes: FloatArray, widths: FloatArray) -> FloatArray:
+    """Slopes that never fall: where the exact ones do, their mean by width takes their place.
+
+    Parameters
+    ----------
+    slopes : array, shape (steps, segments)
+        Exact.
+    widths : array, shape (steps, segments) [kW]
+        Of the pieces.
+
+    Returns
+    -------
+    array, shape (steps, segments)
+        The end points stay exact.
+
+    Examples
+    --------
+    >>> convex_slopes(np.array([[2.0, 3.0], [3.0, 2.0]]), np.ones((2, 2)))
+    array([[2. , 3. ], [2.5, 2.5]])
+    """
+    total = np.maximum(widths.sum(axis=1), 1e-12)
+    mean = (slopes * widths).sum(axis=1) / total
+    falls = (np.diff(slopes, axis=1) < 0.0).any(axis=1)
+    return np.where(falls[:, None], mean[:, None], slopes)
+
+
+def exact_hours(year: UnitYear, full: RunningPoint, hourly: pd.DataFrame) -> pd.DataFrame:
+    """The exact model at the power and the exhaust split of a schedule.
+
+    Parameters
+    ----------
+    year : UnitYear
+        Exact model.
+    full : RunningPoint
+        Clean full load of every hour.
+    hourly : DataFrame, one row a step
+        `unit_on`, `unit_power_kW` and the `share_…` columns of a schedule.
+
+    Returns
+    -------
+    DataFrame, one row a step
+        `unit_fuel_lhv_kW`, heat by grade, exhaust flow and temperature; zero while off.
+    """
+    on = hourly["unit_on"].to_numpy() > 0.0
+    aged_full = year.aged(full)
+    maximum_kW = year.machine.net_kW(aged_full)
+    asked_kW = np.where(on, hourly["unit_power_kW"].to_numpy(dtype=np.float64), maximum_kW)
+    asked_kW = np.clip(asked_kW, year.minimum_load_frac * maximum_kW, maximum_kW)
+    point = year.exact(asked_kW, full)
+    columns = {
+        "unit_fuel_lhv_kW": year.fuel_lhv_kW(point),
+        "exhaust_flow_kg_per_s": point.exhaust_kg_per_s,
+        "exhaust_degC": point.exhaust_K - 273.15,
+    }
+    heat = {grade: np.zeros(len(on)) for grade in GRADES}
+    for path, grades in year.paths.yields_kW(point, year.machine.hours).items():
+        share = hourly[SHARE_COLUMNS[path]].to_numpy(dtype=np.float64)
+        for grade, whole_kW in grades.items():
+            heat[grade] = heat[grade] + share * whole_kW
+    columns |= {f"unit_{grade}_kW": heat_kW for grade, heat_kW in heat.items()}
+    return pd.DataFrame(
+        {name: np.where(on, column, 0.0) for name, column in columns.items()}, index=hourly.index
+    )
