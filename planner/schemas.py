@@ -8,9 +8,7 @@ import json
 from pathlib import Path
 from typing import Any
 
-from pydantic.fields import ComputedFieldInfo, FieldInfo
 from pydantic.json_schema import GenerateJsonSchema
-from pydantic_core import CoreSchema
 
 from planner.results.records import Results
 from planner.study.study import Study
@@ -21,7 +19,7 @@ JSON_SCHEMA_DIALECT = "https://json-schema.org/draft/2020-12/schema"
 class PlainSchema(GenerateJsonSchema):
     """Schema without the titles that would only repeat each key with its units in lower case."""
 
-    def field_title_should_be_set(self, schema: CoreSchema | FieldInfo | ComputedFieldInfo) -> bool:
+    def field_title_should_be_set(self, schema: object) -> bool:
         """Never: the key itself is the title."""
         del schema
         return False

@@ -4,6 +4,7 @@ import ast
 import re
 import subprocess
 import sys
+import tomllib
 from collections.abc import Iterator
 from pathlib import Path
 
@@ -276,6 +277,34 @@ def test_worked_examples_have_their_form() -> None:
 
     assert len(examples) >= 10
     assert lacking == []
+
+
+def _distribution(requirement: str) -> str:
+    """Name of a requirement, without versions and markers."""
+    return re.split(r"[^\w-]", requirement)[0].lower().replace("-", "_")
+
+
+def test_imported_libraries_are_required() -> None:
+    """What the packages import is what a user's install brings, not what the tests happen to."""
+    project = tomllib.loads((ROOT / "pyproject.toml").read_text(encoding="utf-8"))["project"]
+    required = {_distribution(line) for line in project["dependencies"]}
+    used = {
+        name.partition(".")[0].lower()
+        for path in MODULES
+        if not path.is_relative_to(ROOT / "benchmarks")
+        for node in ast.walk(_tree(path))
+        for name in _imported(node)
+    } - {*PACKAGES, *sys.stdlib_module_names}
+
+    assert "numpy" in used
+    assert used - required == set()
+
+
+def _imported(node: ast.AST) -> list[str]:
+    """Modules that an import statement names."""
+    if isinstance(node, ast.Import):
+        return [alias.name for alias in node.names]
+    return [node.module or ""] if isinstance(node, ast.ImportFrom) else []
 
 
 def _checks(node: ast.AST, checking: set[str]) -> bool:

@@ -11,7 +11,13 @@ PACKAGES = ("load_profiles", "planner", "reports")
 
 #: What each room of the planner may import from the planner, besides itself. Data walks from
 #: study to explore; nothing walks back.
-SHARED = {"planner.arrays", "planner.errors", "planner.progress", "planner.data"}
+SHARED = {
+    "planner.arrays",
+    "planner.constants",
+    "planner.data",
+    "planner.errors",
+    "planner.progress",
+}
 UP_TO_STUDY = SHARED | {"planner.study", "planner.results.records"}
 ROOMS = {
     "planner.study": SHARED,
