@@ -10,7 +10,7 @@ import pandas as pd
 
 from load_profiles import SiteYear
 from planner.dispatch import Schedule, solve_year, verify
-from planner.market import bill, prices
+from planner.market import bill, prices, wear
 from planner.market.prices import Prices
 from planner.outcome.flows import exact_flows
 from planner.outcome.money import economics
@@ -81,7 +81,16 @@ def evaluate(
         If no solver gives a schedule that survives verification.
     """
     fuel = GasFuel.from_composition(study.fuel.name, study.fuel.composition_mol_frac)
-    plant = build_plant(study, option, site_year, fuel)
+    rates = None if option is None else wear(option.unit)
+    plant = build_plant(
+        study,
+        option,
+        site_year,
+        fuel,
+        wear=(0.0, 0.0, 0.0)
+        if rates is None
+        else (rates.cost_per_run_hour, rates.cost_per_kWh, rates.cost_per_start),
+    )
     year_prices = prices(study, site_year, fuel)
     schedule = solve_year(
         plant.envelope,

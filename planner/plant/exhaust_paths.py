@@ -2,7 +2,6 @@
 
 from dataclasses import dataclass
 
-
 from planner.arrays import FloatArray
 from planner.plant.drying import drying_heat_kW
 from planner.plant.recovery import (
@@ -66,9 +65,7 @@ class HeatPaths:
         ]
         return tuple(name for name, allowed in offered if allowed)
 
-    def yields_kW(
-        self, point: RunningPoint, hours: Ambient
-    ) -> dict[str, dict[str, FloatArray]]:
+    def yields_kW(self, point: RunningPoint, hours: Ambient) -> dict[str, dict[str, FloatArray]]:
         """Useful heat with the whole exhaust on each path.
 
         Parameters
@@ -149,5 +146,3 @@ def design_paths(heat: Heat, recovery: Recovery, design: RunningPoint) -> HeatPa
     if water is not None:
         alone = design_water_heater(exhaust, water, recovery)
     return HeatPaths(heat, recovery, boiler, behind, alone)
-
-

@@ -1,12 +1,14 @@
 """One machine through one year: exact at any power, and as piecewise-linear functions of it."""
 
 from dataclasses import dataclass, replace
+from itertools import pairwise
 
 import numpy as np
 import pandas as pd
 
 from load_profiles import SiteYear
 from planner.arrays import BoolArray, FloatArray
+from planner.constants import ZERO_CELSIUS_K
 from planner.plant.envelope import ExhaustPath, UnitEnvelope
 from planner.plant.exhaust_paths import SHARE_COLUMNS, HeatPaths, design_paths
 from planner.plant.fuel import GasFuel
@@ -74,12 +76,14 @@ class UnitYear:
             exhaust_K=point.gas.temperature_at_enthalpy_K(enthalpy, point.exhaust_K),
         )
 
-    def clean_net_kW(self, net_kW: FloatArray) -> FloatArray:
-        """Net power of the clean machine that an aged net power comes from.
+    def net_kW(self, aged: RunningPoint) -> FloatArray:
+        """Net power of an aged point; its gas compressor carries the further fuel."""
+        work = self.machine.compression_kJ_per_kg / (1.0 + self.unit.average_fuel_rise_frac)
+        compressor_kW = aged.fuel_kg_per_s * work
+        return np.asarray(aged.terminal_power_kW - self.machine.auxiliary_kW - compressor_kW)
 
-        The auxiliaries stay; the gas compressor's part is near enough proportional to power for
-        the exact model to be asked at the clean power that ages to the wanted one.
-        """
+    def clean_net_kW(self, net_kW: FloatArray) -> FloatArray:
+        """Net power of the clean machine that ages to a net power; auxiliaries do not fall."""
         kept = 1.0 - self.unit.average_power_loss_frac
         return np.asarray((net_kW + (1.0 - kept) * self.machine.auxiliary_kW) / kept)
 
@@ -125,7 +129,9 @@ def unit_year(study: Study, option: Option, site_year: SiteYear, fuel: GasFuel) 
         inlet_loss_kPa=unit.inlet_loss_kPa,
         exhaust_loss_kPa=unit.exhaust_loss_kPa,
     )
-    machine = net_machine(study, unit, turbine, hours, fuel, float(pressure_kPa.mean()))
+    machine = net_machine(
+        study, unit, turbine, hours, fuel=fuel, ambient_kPa=float(pressure_kPa.mean())
+    )
     bare = UnitYear(
         unit,
         turbine,
@@ -143,6 +149,7 @@ def net_machine(
     unit: Unit,
     turbine: GasTurbine,
     hours: Ambient,
+    *,
     fuel: GasFuel,
     ambient_kPa: float,
 ) -> NetMachine:
@@ -166,19 +173,20 @@ def net_machine(
     Returns
     -------
     NetMachine
-        Ready to run.
+        Ready to run; its gas compressor carries the further fuel of the aged machine.
     """
+    work = compression_kJ_per_kg(
+        fuel,
+        supply_kPa_gauge=study.fuel.supply_pressure_kPa_gauge,
+        needed_kPa_gauge=unit.sheet.fuel_gas_pressure_kPa_gauge,
+        ambient_kPa=ambient_kPa,
+    )
     cap_kW = unit.sheet.generator_limit_kW or USUAL_CAP * unit.sheet.power_kW
     return NetMachine(
         turbine=turbine,
         hours=hours,
         auxiliary_kW=unit.auxiliary_kW,
-        compression_kJ_per_kg=compression_kJ_per_kg(
-            fuel,
-            supply_kPa_gauge=study.fuel.supply_pressure_kPa_gauge,
-            needed_kPa_gauge=unit.sheet.fuel_gas_pressure_kPa_gauge,
-            ambient_kPa=ambient_kPa,
-        ),
+        compression_kJ_per_kg=work * (1.0 + unit.average_fuel_rise_frac),
         terminal_limit_kW=cap_kW,
     )
 
@@ -194,7 +202,7 @@ def _design_point(year: UnitYear, study: Study, fuel: GasFuel) -> RunningPoint:
         inlet_loss_kPa=year.unit.inlet_loss_kPa,
         exhaust_loss_kPa=year.unit.exhaust_loss_kPa,
     )
-    one = net_machine(study, year.unit, year.turbine, hour, fuel, pressure_kPa)
+    one = net_machine(study, year.unit, year.turbine, hour, fuel=fuel, ambient_kPa=pressure_kPa)
     return year.aged(one.full_load())
 
 
@@ -227,13 +235,13 @@ def unit_envelope(
     """
     full = year.full_load()
     aged_full = year.aged(full)
-    maximum_kW = year.machine.net_kW(aged_full)
+    maximum_kW = year.net_kW(aged_full)
     minimum_kW = year.minimum_load_frac * maximum_kW
     nodes_kW = [minimum_kW + share * (maximum_kW - minimum_kW) for share in NODES]
     points = [*(year.exact(node, full) for node in nodes_kW[:-1]), aged_full]
     fuels = [year.fuel_lhv_kW(point) for point in points]
     yields = [year.paths.yields_kW(point, year.machine.hours) for point in points]
-    widths = np.column_stack([b - a for a, b in zip(nodes_kW, nodes_kW[1:], strict=False)])
+    widths = np.column_stack([b - a for a, b in pairwise(nodes_kW)])
     per_hour, per_kWh, per_start = costs
     envelope = UnitEnvelope(
         name=year.unit.name,
@@ -263,15 +271,14 @@ def _path(
         name=name,
         yield_at_minimum_kW=dict(grades),
         yield_slope={
-            grade: _slopes([at_node[name][grade] for at_node in yields], widths)
-            for grade in grades
+            grade: _slopes([at_node[name][grade] for at_node in yields], widths) for grade in grades
         },
     )
 
 
 def _slopes(at_nodes: list[FloatArray], widths: FloatArray) -> FloatArray:
     """Rise over width of each piece, shape (steps, segments)."""
-    rises = np.column_stack([b - a for a, b in zip(at_nodes, at_nodes[1:], strict=False)])
+    rises = np.column_stack([b - a for a, b in pairwise(at_nodes)])
     return np.divide(rises, widths, out=np.zeros_like(rises), where=widths > 0.0)
 
 
@@ -297,7 +304,7 @@ def convex_slopes(slopes: FloatArray, widths: FloatArray) -> FloatArray:
     """
     total = np.maximum(widths.sum(axis=1), 1e-12)
     mean = (slopes * widths).sum(axis=1) / total
-    falls = (np.diff(slopes, axis=1) < 0.0).any(axis=1)
+    falls: BoolArray = np.asarray((np.diff(slopes, axis=1) < 0.0).any(axis=1))
     return np.where(falls[:, None], mean[:, None], slopes)
 
 
@@ -320,14 +327,14 @@ def exact_hours(year: UnitYear, full: RunningPoint, hourly: pd.DataFrame) -> pd.
     """
     on = hourly["unit_on"].to_numpy() > 0.0
     aged_full = year.aged(full)
-    maximum_kW = year.machine.net_kW(aged_full)
+    maximum_kW = year.net_kW(aged_full)
     asked_kW = np.where(on, hourly["unit_power_kW"].to_numpy(dtype=np.float64), maximum_kW)
     asked_kW = np.clip(asked_kW, year.minimum_load_frac * maximum_kW, maximum_kW)
     point = year.exact(asked_kW, full)
     columns = {
         "unit_fuel_lhv_kW": year.fuel_lhv_kW(point),
         "exhaust_flow_kg_per_s": point.exhaust_kg_per_s,
-        "exhaust_degC": point.exhaust_K - 273.15,
+        "exhaust_degC": point.exhaust_K - ZERO_CELSIUS_K,
     }
     heat = {grade: np.zeros(len(on)) for grade in GRADES}
     for path, grades in year.paths.yields_kW(point, year.machine.hours).items():
