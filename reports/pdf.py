@@ -210,7 +210,9 @@ def _check_place(place: Path) -> None:
 def _write_whole(place: Path, content: bytes) -> None:
     """Write under another name first, so that a file is either whole or absent."""
     try:
-        with tempfile.NamedTemporaryFile(dir=place.parent, prefix=f".{place.name}-", delete=False) as draft:
+        with tempfile.NamedTemporaryFile(
+            dir=place.parent, prefix=f".{place.name}-", delete=False
+        ) as draft:
             path = Path(draft.name)
             draft.write(content)
         path.chmod(0o644)

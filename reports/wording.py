@@ -34,6 +34,11 @@ def carrier(key: str) -> str:
     return CARRIERS[key]
 
 
+def exhaust_heat(grade: str) -> str:
+    """What the exhaust gives, as the figures name it."""
+    return {"hot_gas": "Hot exhaust", "steam": "Exhaust steam", "hot_water": "Exhaust water"}[grade]
+
+
 def with_article(name: str) -> str:
     """An option's name inside a sentence; a bare size or small letter takes an article.
 
@@ -46,7 +51,7 @@ def with_article(name: str) -> str:
     return f"the {name}" if takes and not name.lower().startswith("the ") else name
 
 
-def capital_first(sentence: str) -> str:
+def upper_first(sentence: str) -> str:
     """A sentence with its first letter large."""
     return sentence[:1].upper() + sentence[1:]
 
@@ -71,7 +76,7 @@ def real_subscripts(text: str) -> str:
 
 def capital_line(name: str) -> str:
     """A capital line's key in words."""
-    return capital_first(name.replace("_", " "))
+    return upper_first(name.replace("_", " "))
 
 
 def has_store(option: dict[str, Any]) -> bool:

@@ -41,18 +41,20 @@ def draw_bill_bars(rows: Sequence[Row], currency: str) -> str:
     paid = [sum(v for v in amounts.values() if v > 0.0) for _, amounts in rows]
     earned = [sum(-v for v in amounts.values() if v < 0.0) for _, amounts in rows]
     divisor, word = money_scale(max(paid))
-    x = Scale(-max(earned), max(paid), LEFT, WIDTH - 16.0)
+    x = Scale(-max(earned) / divisor, max(paid) / divisor, LEFT, WIDTH - 16.0)
     drawing = Drawing(WIDTH, TOP + len(rows) * STEP - 2.0)
     used = [key for key in NAMES if any(abs(a.get(key, 0.0)) > 0.0 for _, a in rows)]
     drawing.text(0.0, 2.6, f"{currency} {word} a year", fill=GREY)
     drawing.swatches(34.0, 2.6, [(COLOURS[key], NAMES[key]) for key in used])
     for place, (name, amounts) in enumerate(rows):
-        _row(drawing, x, name, amounts, divisor, TOP + place * STEP)
-    drawing.line((x(0.0), TOP - 1.0), (x(0.0), TOP + len(rows) * STEP - 2.6), stroke=INK, width_pt=0.6)
+        _row(drawing, x, TOP + place * STEP, name, {k: v / divisor for k, v in amounts.items()})
+    drawing.line(
+        (x(0.0), TOP - 1.0), (x(0.0), TOP + len(rows) * STEP - 2.6), stroke=INK, width_pt=0.6
+    )
     return drawing.svg()
 
 
-def _row(drawing: Drawing, x: Scale, name: str, amounts: dict[str, float], divisor: float, y: float) -> None:
+def _row(drawing: Drawing, x: Scale, y: float, name: str, amounts: dict[str, float]) -> None:
     """One bill: its name above, its bands, its total at the end."""
     drawing.text(x(0.0) + 0.6, y + 1.6, name, size_pt=NAME_PT, bold=True)
     right = left = 0.0
@@ -60,9 +62,15 @@ def _row(drawing: Drawing, x: Scale, name: str, amounts: dict[str, float], divis
         amount = amounts.get(key, 0.0)
         start = right if amount >= 0.0 else left
         drawing.rect(x(start), y + 2.8, x(start + amount) - x(start), BAR, COLOURS[key])
-        words = significant(amount / divisor)
+        words = significant(amount)
         if abs(x(amount) - x(0.0)) > text_width_mm(words) + 2.0:
             middle = x(start + amount / 2)
             drawing.text(middle, y + 6.0, words, fill=letters_on(COLOURS[key]), anchor="middle")
         right, left = (right + amount, left) if amount >= 0.0 else (right, left + amount)
-    drawing.text(x(right) + 1.6, y + 6.1, significant(right / divisor + left / divisor), size_pt=NAME_PT, bold=True)
+    drawing.text(
+        x(right) + 1.6,
+        y + 6.1,
+        significant(right + left),
+        size_pt=NAME_PT,
+        bold=True,
+    )

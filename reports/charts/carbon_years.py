@@ -8,8 +8,8 @@ from reports.charts.palette import EXPORT, GREY, INK, LOSING
 from reports.charts.scales import Scale, left_axis, rounded_range
 from reports.numbers import number
 
-WIDTH, HEIGHT = 126.0, 52.0
-LEFT, RIGHT, TOP, FOOT = 12.0, 124.0, 6.0, 46.0
+WIDTH, HEIGHT = 126.0, 42.0
+LEFT, RIGHT, TOP, FOOT = 12.0, 124.0, 6.0, 36.0
 
 
 def draw_carbon_years(years: Sequence[dict[str, Any]], stops_year: int | None) -> str:
@@ -39,13 +39,23 @@ def draw_carbon_years(years: Sequence[dict[str, Any]], stops_year: int | None) -
         drawing.rect(x(place) - 0.32 * width, y(amount), 0.64 * width, y(0.0) - y(amount), colour)
         if place % 5 == 0:
             factor = f"grid {number(float(years[place]['grid_kg_per_kWh']), 3)}"
-            drawing.text(x(place), FOOT + 2.8, str(years[place]["calendar_year"]), fill=GREY, anchor="middle")
+            drawing.text(
+                x(place), FOOT + 2.8, str(years[place]["calendar_year"]), fill=GREY, anchor="middle"
+            )
             drawing.text(x(place), FOOT + 5.6, factor, fill=GREY, anchor="middle")
     drawing.line((LEFT, y(0.0)), (RIGHT, y(0.0)), stroke=INK, width_pt=1.3)
     numbers = [int(year["calendar_year"]) for year in years]
     if stops_year in numbers and numbers.index(stops_year) > 0:
         place = numbers.index(stops_year)
-        drawing.line((x(place - 0.5), TOP), (x(place - 0.5), FOOT), stroke=INK, width_pt=0.6, dashes="1 .7")
+        drawing.line(
+            (x(place - 0.5), TOP), (x(place - 0.5), FOOT), stroke=INK, width_pt=0.6, dashes="1 .7"
+        )
         anchor, shift = ("start", 1.2) if place < 0.6 * len(years) else ("end", -1.2)
-        drawing.label(x(place - 0.5) + shift, TOP + 2.4, f"saves nothing from {stops_year} on", anchor=anchor, bold=True)
+        drawing.label(
+            x(place - 0.5) + shift,
+            TOP + 2.4,
+            f"saves nothing from {stops_year} on",
+            anchor=anchor,
+            bold=True,
+        )
     return drawing.svg()

@@ -8,8 +8,8 @@ from reports.charts.palette import GAINING, GREY, INK, LOSING
 from reports.charts.scales import Scale, left_axis, rounded_range
 from reports.numbers import money_scale
 
-WIDTH, HEIGHT = 126.0, 60.0
-LEFT, RIGHT, TOP, FOOT = 11.0, 108.0, 6.0, 54.0
+WIDTH, HEIGHT = 126.0, 48.0
+LEFT, RIGHT, TOP, FOOT = 11.0, 108.0, 6.0, 42.5
 BALANCE = "#8A8F98"
 
 
@@ -43,14 +43,19 @@ def draw_cash(years: Sequence[dict[str, Any]], currency: str) -> str:
         drawing.rect(x(place) - 1.3, y(amount), 2.6, y(0.0) - y(amount), colour)
     drawing.line((LEFT, y(0.0)), (RIGHT, y(0.0)), stroke=INK, width_pt=1.3)
     ends = []
-    for key, name, colour in (("cumulative", "Balance", BALANCE), ("cumulative_discounted", "Balance, discounted", INK)):
+    for key, name, colour in (
+        ("cumulative", "Balance", BALANCE),
+        ("cumulative_discounted", "Balance, discounted", INK),
+    ):
         line = [(x(place), y(float(year[key]) / divisor)) for place, year in enumerate(years)]
         drawing.polyline(line, stroke=colour, width_pt=1.2)
         ends.append((line[-1][1], name))
     _names(drawing, ends)
     for place, year in enumerate(years):
         if place % 5 == 0:
-            drawing.text(x(place), FOOT + 4.0, str(year["calendar_year"]), fill=GREY, anchor="middle")
+            drawing.text(
+                x(place), FOOT + 4.0, str(year["calendar_year"]), fill=GREY, anchor="middle"
+            )
     return drawing.svg()
 
 
@@ -60,7 +65,9 @@ def _names(drawing: Drawing, ends: list[tuple[float, str]]) -> None:
     if abs(first - second) < 7.0:  # noqa: PLR2004 - three lines of letters
         upper_first = first <= second
         middle = (first + second) / 2
-        first, second = (middle - 3.0, middle + 4.0) if upper_first else (middle + 4.0, middle - 3.0)
+        first, second = (
+            (middle - 3.0, middle + 4.0) if upper_first else (middle + 4.0, middle - 3.0)
+        )
     for y, words in ((first, name), (second, other)):
         head, _, rest = words.partition(", ")
         drawing.text(RIGHT + 1.6, y + 0.9, f"{head}{',' if rest else ''}", bold=True)

@@ -34,8 +34,17 @@ def draw_composite(gas: Curve, sink: Curve) -> str:
     drawing.text(0.0, 2.6, "°C", fill=GREY)
     left_axis(drawing, y, LEFT, grid_to=RIGHT)
     bottom_axis(drawing, x, FOOT, most=7)
-    drawing.text((LEFT + RIGHT) / 2, FOOT + 7.4, "Heat given up by the exhaust, MW", fill=GREY, anchor="middle")
-    for curve, colour, name, lift in ((gas, HEAT_HIGH, "exhaust", -2.0), (sink, POWER, "steam and water", 4.0)):
+    drawing.text(
+        (LEFT + RIGHT) / 2,
+        FOOT + 7.4,
+        "Heat given up by the exhaust, MW",
+        fill=GREY,
+        anchor="middle",
+    )
+    for curve, colour, name, lift in (
+        (gas, HEAT_HIGH, "exhaust", -2.0),
+        (sink, POWER, "steam and water", 4.0),
+    ):
         if not curve:
             continue
         points = [(x(heat / 1e3), y(temperature)) for heat, temperature in curve]

@@ -9,7 +9,7 @@ from reports.charts.palette import GREY, HAIR, INK, WHITE
 PT_MM = 25.4 / 72.0
 
 #: Mean advance of the sans letters over their size, for placing labels; measured on running text.
-LETTER_WIDTH = 0.5
+LETTER_WIDTH = 0.53
 
 FONT = "Report Sans, Report Serif"
 LABEL_PT = 7.0

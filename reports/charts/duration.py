@@ -12,12 +12,12 @@ from reports.charts.scales import Scale, bottom_axis, left_axis, rounded_range
 
 Array = npt.NDArray[np.float64]
 
-WIDTH, HEIGHT = 126.0, 50.0
-LEFT, RIGHT, TOP, FOOT = 9.0, 124.0, 6.0, 40.0
+WIDTH, HEIGHT = 126.0, 44.0
+LEFT, RIGHT, TOP, FOOT = 9.0, 124.0, 6.0, 34.5
 POINTS = 400
 
-#: Lines nearer than this share one label's height, so one of the labels moves.
-LABEL_GAP_MM = 3.4
+#: Height that a band needs to carry its name.
+LABEL_MM = 3.0
 
 
 @dataclass(frozen=True)
@@ -39,6 +39,20 @@ class Curve:
     colour: str
 
 
+@dataclass(frozen=True)
+class _Plot:
+    """A picture with its axes: hours to the right, megawatts upwards."""
+
+    drawing: Drawing
+    x: Scale
+    y: Scale
+    step_h: float
+
+    def at(self, place: int, value_MW: float) -> tuple[float, float]:
+        """Point of the step at this place in the order of size."""
+        return self.x((place + 0.5) * self.step_h), self.y(float(value_MW))
+
+
 def draw_durations(curves: Sequence[Curve], step_h: float) -> str:
     """Draw several demands, each in order of its own size.
 
@@ -55,20 +69,15 @@ def draw_durations(curves: Sequence[Curve], step_h: float) -> str:
         SVG.
     """
     top_MW = max(float(curve.values_kW.max()) for curve in curves) / 1e3
-    drawing, x, y = _frame(top_MW, len(curves[0].values_kW) * step_h)
-    taken: list[float] = []
-    for curve in curves:
-        ordered = np.sort(curve.values_kW)[::-1] / 1e3
-        drawing.polyline(_points(ordered, x, y, step_h), stroke=curve.colour, width_pt=1.2)
-    for curve in sorted(curves, key=lambda curve: -float(np.quantile(curve.values_kW, 0.55))):
-        place_h = 0.45 * x.high
-        value = float(np.quantile(curve.values_kW, 0.55)) / 1e3
-        height = y(value) - 1.4
-        while any(abs(height - other) < LABEL_GAP_MM for other in taken):
-            height -= 0.5
-        taken.append(height)
-        drawing.label(x(place_h), height, curve.name, bold=True)
-    return drawing.svg()
+    plot = _plot(top_MW, len(curves[0].values_kW), step_h)
+    ordered_MW = [np.sort(curve.values_kW)[::-1] / 1e3 for curve in curves]
+    for curve, values in zip(curves, ordered_MW, strict=True):
+        plot.drawing.polyline(_points(plot, values), stroke=curve.colour, width_pt=1.2)
+    for place, curve in enumerate(curves):
+        others = [values for other, values in enumerate(ordered_MW) if other != place]
+        left, height = _clear_place(plot, ordered_MW[place], others, curve.name)
+        plot.drawing.text(left, height, curve.name, fill=curve.colour, bold=True)
+    return plot.drawing.svg()
 
 
 def draw_shares(demand_kW: Array, parts: Sequence[Curve], step_h: float) -> str:
@@ -89,32 +98,68 @@ def draw_shares(demand_kW: Array, parts: Sequence[Curve], step_h: float) -> str:
         SVG.
     """
     order = np.argsort(-demand_kW, kind="stable")
-    drawing, x, y = _frame(float(demand_kW.max()) / 1e3, len(demand_kW) * step_h)
+    plot = _plot(float(demand_kW.max()) / 1e3, len(demand_kW), step_h)
     places = _places(len(order))
     lower = np.zeros(len(places))
     bands = []
     for part in parts:
         upper = lower + _smoothed(part.values_kW[order])[places] / 1e3
-        edge = [(x((p + 0.5) * step_h), y(v)) for p, v in zip(places, upper, strict=True)]
-        under = [(x((p + 0.5) * step_h), y(v)) for p, v in zip(places, lower, strict=True)]
-        drawing.area(edge, under, part.colour)
-        bands.append((part, lower, upper))
+        edges = [
+            [plot.at(place, value) for place, value in zip(places, edge, strict=True)]
+            for edge in (upper, lower)
+        ]
+        plot.drawing.area(edges[0], edges[1], part.colour)
+        bands.append((part, edges[0], edges[1]))
         lower = upper
-    drawing.polyline(_points(demand_kW[order] / 1e3, x, y, step_h), stroke=INK, width_pt=1.1)
-    thin = [part for part, low, high in bands if not _named(drawing, part, low, high, places, x, y, step_h)]
-    drawing.swatches(40.0, 2.6, [(part.colour, part.name) for part in thin])
-    return drawing.svg()
+    plot.drawing.polyline(_points(plot, demand_kW[order] / 1e3), stroke=INK, width_pt=1.1)
+    thin = [part for part, over, under in bands if not _named(plot.drawing, part, over, under)]
+    plot.drawing.swatches(40.0, 2.6, [(part.colour, part.name) for part in thin])
+    return plot.drawing.svg()
 
 
-def _frame(top_MW: float, hours: float) -> tuple[Drawing, Scale, Scale]:
+def _clear_place(
+    plot: _Plot, values: Array, others: Sequence[Array], name: str
+) -> tuple[float, float]:
+    """Where a line's name stands over it, farthest from every other line."""
+    x, y = plot.x, plot.y
+    width = text_width_mm(name)
+    best = (-1.0, LEFT, TOP)
+    for left in np.linspace(LEFT + 6.0, RIGHT - width - 2.0, 40):
+        ends = [
+            round((place - LEFT) / (RIGHT - LEFT) * x.high / plot.step_h)
+            for place in (left, left + width)
+        ]
+        height = y(float(values[ends[0]])) - 1.0
+        crossing = [y(float(other[place])) for other in others for place in ends]
+        room = min((_distance(height, line) for line in crossing), default=9.0)
+        if room > best[0] + 0.2 and height - 2.0 > TOP:
+            best = (room, float(left), height)
+    return best[1], best[2]
+
+
+def _distance(height: float, line: float) -> float:
+    """From letters on a baseline to a line above or below them."""
+    return max(line - height, height - 2.0 - line, 0.0)
+
+
+def _plot(top_MW: float, steps: int, step_h: float) -> _Plot:
     """Axes of both figures."""
     drawing = Drawing(WIDTH, HEIGHT)
-    x, y = Scale(0.0, hours, LEFT, RIGHT), Scale(0.0, rounded_range(0.0, top_MW, 5)[1], FOOT, TOP)
+    x, y = (
+        Scale(0.0, steps * step_h, LEFT, RIGHT),
+        Scale(0.0, rounded_range(0.0, top_MW, 5)[1], FOOT, TOP),
+    )
     drawing.text(0.0, 2.6, "MW", fill=GREY)
     left_axis(drawing, y, LEFT)
     bottom_axis(drawing, x, FOOT, most=5)
-    drawing.text((LEFT + RIGHT) / 2, FOOT + 7.4, "Hours a year in which demand is at least this high", fill=GREY, anchor="middle")
-    return drawing, x, y
+    drawing.text(
+        (LEFT + RIGHT) / 2,
+        FOOT + 7.4,
+        "Hours a year in which demand is at least this high",
+        fill=GREY,
+        anchor="middle",
+    )
+    return _Plot(drawing, x, y, step_h)
 
 
 def _places(steps: int) -> npt.NDArray[np.int64]:
@@ -123,9 +168,9 @@ def _places(steps: int) -> npt.NDArray[np.int64]:
     return np.unique(np.r_[head, np.linspace(steps // 36, steps - 1, POINTS).astype(np.int64)])
 
 
-def _points(ordered_MW: Array, x: Scale, y: Scale, step_h: float) -> list[tuple[float, float]]:
+def _points(plot: _Plot, ordered_MW: Array) -> list[tuple[float, float]]:
     """Points of a falling line."""
-    return [(x((place + 0.5) * step_h), y(float(ordered_MW[place]))) for place in _places(len(ordered_MW))]
+    return [plot.at(place, ordered_MW[place]) for place in _places(len(ordered_MW))]
 
 
 def _smoothed(values: Array) -> Array:
@@ -136,17 +181,23 @@ def _smoothed(values: Array) -> Array:
     return (sums[window:] - sums[:-window]) / window
 
 
-def _named(drawing: Drawing, part: Curve, low: Array, high: Array, places: npt.NDArray[np.int64], x: Scale, y: Scale, step_h: float) -> bool:
+def _named(
+    drawing: Drawing,
+    part: Curve,
+    upper: Sequence[tuple[float, float]],
+    lower: Sequence[tuple[float, float]],
+) -> bool:
     """Write a band's name into it, if it is anywhere thick enough for that."""
-    lefts = np.array([x((place + 0.5) * step_h) for place in places])
-    tall = np.array([y(a) - y(b) for a, b in zip(low, high, strict=True)])
+    lefts = np.array([x for x, _ in upper])
+    ceilings = np.array([y for _, y in upper])
+    floors = np.array([y for _, y in lower])
     width = text_width_mm(part.name) + 2.0
-    for place in range(len(places)):
-        inside = (lefts >= lefts[place]) & (lefts <= lefts[place] + width)
-        if lefts[place] + width > RIGHT or lefts[place] < LEFT + 2.0:
-            continue
-        floor, ceiling = y(float(low[inside].max())), y(float(high[inside].min()))
-        if tall[inside].min() >= 3.0 and floor - ceiling >= 3.0:  # noqa: PLR2004 - a label's height
-            drawing.text(lefts[place] + 1.0, (floor + ceiling) / 2 + 0.9, part.name, fill=letters_on(part.colour), bold=True)
+    for left in lefts[(lefts > LEFT + 2.0) & (lefts + width < RIGHT)]:
+        inside = (lefts >= left) & (lefts <= left + width)
+        floor, ceiling = float(floors[inside].min()), float(ceilings[inside].max())
+        if floor - ceiling >= LABEL_MM:
+            middle = (floor + ceiling) / 2 + 0.9
+            colour = letters_on(part.colour)
+            drawing.text(float(left) + 1.0, middle, part.name, fill=colour, bold=True)
             return True
     return False

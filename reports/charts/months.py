@@ -6,8 +6,8 @@ from reports.charts.drawing import Drawing
 from reports.charts.palette import GREY, INK
 from reports.charts.scales import MONTHS, Scale, left_axis, rounded_range
 
-WIDTH, HEIGHT = 126.0, 40.0
-LEFT, TOP, FOOT = 9.0, 6.0, 35.0
+WIDTH, HEIGHT = 126.0, 35.0
+LEFT, TOP, FOOT = 9.0, 6.0, 30.5
 
 Band = tuple[str, str, Sequence[float]]
 

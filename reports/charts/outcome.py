@@ -15,7 +15,7 @@ from reports.charts.palette import (
     WHITE,
 )
 from reports.charts.scales import Scale, mark_text, round_step
-from reports.numbers import money_scale, significant, signed_percent
+from reports.numbers import money_scale, signed_percent, significant
 
 WIDTH = 126.0
 LEFT, RIGHT = 34.0, 122.0
@@ -71,21 +71,23 @@ def draw_outcome(
     """
     values = [npv for bar in bars for npv, _ in bar.ends()] + [planned_npv, 0.0]
     values += [] if combined_npv is None else [combined_npv]
-    divisor, word = money_scale(max(abs(value) for value in values))
-    margin = 0.09 * (max(values) - min(values) or divisor)
+    margin = 0.09 * (max(values) - min(values) or 1.0)
     x = Scale(min(values) - margin, max(values) + margin, LEFT + 6.0, RIGHT)
+    divisor, word = money_scale(max(abs(x.low), abs(x.high)))
     foot = TOP + (len(bars) + 1) * STEP + 1.6
     drawing = Drawing(WIDTH, foot + 5.2)
     _value_axis(drawing, x, divisor, foot, f"{currency} {word}")
     labels: list[tuple[float, float, str, str]] = []
     for row, bar in enumerate(bars):
         labels += _one_bar(drawing, x, bar, planned_npv, TOP + row * STEP)
-    labels += _combined(drawing, x, combined_npv, planned_npv, divisor, TOP + len(bars) * STEP + 1.6)
+    labels += _combined(drawing, x, TOP + len(bars) * STEP + 1.6, combined_npv, planned_npv)
     drawing.line((x(0.0), 5.0), (x(0.0), foot), stroke=INK, width_pt=1.3)
     for place, y, words, anchor in labels:
         drawing.label(place, y, words, anchor=anchor)
     drawing.line((x(planned_npv), 5.0), (x(planned_npv), foot), stroke=WHITE, width_pt=1.1)
-    drawing.line((x(planned_npv), 5.0), (x(planned_npv), foot), stroke=INK, width_pt=0.6, dashes="1 .7")
+    drawing.line(
+        (x(planned_npv), 5.0), (x(planned_npv), foot), stroke=INK, width_pt=0.6, dashes="1 .7"
+    )
     _feet(drawing, x, planned_npv, divisor, foot + 3.2)
     return drawing.svg()
 
@@ -108,7 +110,9 @@ def _one_bar(
     labels = []
     for npv, words in bar.ends():
         loses = npv < planned
-        drawing.rect(x(planned), y - BAR / 2, x(npv) - x(planned), BAR, LOSING if loses else GAINING)
+        drawing.rect(
+            x(planned), y - BAR / 2, x(npv) - x(planned), BAR, LOSING if loses else GAINING
+        )
         place, anchor = (x(npv) - 1.0, "end") if loses else (x(npv) + 1.0, "start")
         labels.append((place, y + 0.9, words, anchor))
     if not bar.ends():
@@ -117,7 +121,7 @@ def _one_bar(
 
 
 def _combined(
-    drawing: Drawing, x: Scale, npv: float | None, planned: float, divisor: float, y: float
+    drawing: Drawing, x: Scale, y: float, npv: float | None, planned: float
 ) -> list[tuple[float, float, str, str]]:
     """The combined bad variant, below a line of its own."""
     drawing.line((0.0, y - STEP / 2 - 0.4), (RIGHT, y - STEP / 2 - 0.4), stroke=HAIR)
@@ -127,6 +131,7 @@ def _combined(
     turn = min(max(0.0, npv), planned) if planned > 0.0 else planned
     drawing.rect(x(turn), y - BAR / 2, x(planned) - x(turn), BAR, LOSING_PALE)
     drawing.rect(x(npv), y - BAR / 2, x(turn) - x(npv), BAR, LOSING)
+    divisor, _ = money_scale(max(abs(x.low), abs(x.high)))
     return [(x(npv) - 1.0, y + 0.9, significant(npv / divisor, 2), "end")]
 
 

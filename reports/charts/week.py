@@ -5,15 +5,16 @@ from dataclasses import dataclass
 
 import numpy as np
 import numpy.typing as npt
+from numpy.lib.stride_tricks import sliding_window_view
 
-from reports.charts.drawing import Drawing, text_width_mm
+from reports.charts.drawing import Drawing, Point, text_width_mm
 from reports.charts.palette import GREY, HAIR, INK, letters_on
 from reports.charts.scales import Scale, left_axis, rounded_range
 
 Array = npt.NDArray[np.float64]
 
 WIDTH, LEFT, RIGHT = 126.0, 9.0, 126.0
-TOP, PLOT = 6.0, 27.0
+TOP, PLOT = 6.0, 23.0
 LEAST_LABEL_MM = 3.0
 
 
@@ -67,7 +68,9 @@ def draw_week(
     bands = [band for band in bands if float(band.values_kW.max()) > 0.0]
     stack = np.sum([band.values_kW for band in bands], axis=0) if bands else demand_kW
     lowest = -float(below.values_kW.max()) if below is not None else 0.0
-    low, high = rounded_range(lowest / 1e3, max(float(stack.max()), float(demand_kW.max()), 1.0) / 1e3, 4)
+    low, high = rounded_range(
+        lowest / 1e3, max(float(stack.max()), float(demand_kW.max()), 1.0) / 1e3, 4
+    )
     y, x = Scale(low, high, TOP + PLOT, TOP), Scale(0.0, len(demand_kW), LEFT, RIGHT)
     drawing = Drawing(WIDTH, TOP + PLOT + 4.4)
     drawing.text(0.0, 2.6, f"MW {what}", fill=GREY)
@@ -76,22 +79,31 @@ def draw_week(
     lower = np.zeros(len(demand_kW))
     for band in bands:
         upper = lower + band.values_kW / 1e3
-        drawing.area(_steps(upper, x, y), _steps(lower, x, y), band.colour)
-        if not _named(drawing, band, lower, upper, x, y):
+        edges = _steps(upper, x, y), _steps(lower, x, y)
+        drawing.area(*edges, band.colour)
+        if not _named(drawing, band, *edges):
             unnamed.append((band.colour, band.name))
         lower = upper
     if below is not None and lowest < 0.0:
         drawing.area(_steps(0.0 * lower, x, y), _steps(-below.values_kW / 1e3, x, y), below.colour)
         unnamed.append((below.colour, below.name))
     drawing.polyline(_steps(demand_kW / 1e3, x, y), stroke=INK, width_pt=0.8)
-    _day_axis(drawing, x, y, days)
-    drawing.swatches(34.0, 2.6, unnamed)
-    drawing.line((RIGHT - 18.0, 1.7), (RIGHT - 13.0, 1.7), stroke=INK, width_pt=0.8)
-    drawing.text(RIGHT - 12.0, 2.6, "demand", fill=GREY)
+    _day_axis(drawing, y, days)
+    _key(drawing, unnamed)
     return drawing.svg()
 
 
-def _steps(values: Array, x: Scale, y: Scale) -> list[tuple[float, float]]:
+def _key(drawing: Drawing, unnamed: Sequence[tuple[str, str]]) -> None:
+    """Names at the top right: of the demand's line, and of bands too thin to carry theirs."""
+    left = RIGHT - text_width_mm("demand") - 6.6
+    drawing.line((left, 1.7), (left + 5.0, 1.7), stroke=INK, width_pt=0.8)
+    drawing.text(left + 6.2, 2.6, "demand", fill=GREY)
+    for fill, name in reversed(unnamed):
+        left -= 3.2 + text_width_mm(name) + 4.0
+        drawing.swatches(left, 2.6, [(fill, name)])
+
+
+def _steps(values: Array, x: Scale, y: Scale) -> list[Point]:
     """A line that keeps each value for its whole step."""
     points = []
     for place, value in enumerate(values):
@@ -99,7 +111,7 @@ def _steps(values: Array, x: Scale, y: Scale) -> list[tuple[float, float]]:
     return points
 
 
-def _day_axis(drawing: Drawing, x: Scale, y: Scale, days: Sequence[str]) -> None:
+def _day_axis(drawing: Drawing, y: Scale, days: Sequence[str]) -> None:
     """Zero line, days and their names."""
     foot = TOP + PLOT
     drawing.line((LEFT, y(0.0)), (RIGHT, y(0.0)), stroke=INK, width_pt=0.6)
@@ -111,17 +123,24 @@ def _day_axis(drawing: Drawing, x: Scale, y: Scale, days: Sequence[str]) -> None
         drawing.text(left + width / 2, foot + 3.6, name, fill=GREY, anchor="middle")
 
 
-def _named(drawing: Drawing, band: Band, lower: Array, upper: Array, x: Scale, y: Scale) -> bool:
+def _named(drawing: Drawing, band: Band, upper: list[Point], lower: list[Point]) -> bool:
     """Write a band's name where it is thickest, if it is thick enough there."""
-    span = max(int(np.ceil((text_width_mm(band.name) + 2.0) / (x(1.0) - x(0.0)))), 1)
-    if span >= len(lower):
+    pitch_mm = upper[1][0] - upper[0][0]
+    span = 2 * max(int(np.ceil((text_width_mm(band.name) + 2.0) / pitch_mm)), 1)
+    if span >= len(upper):
         return False
-    floors = np.array([lower[i : i + span].max() for i in range(len(lower) - span)])
-    ceilings = np.array([upper[i : i + span].min() for i in range(len(lower) - span)])
-    place = int((ceilings - floors).argmax())
-    floor, ceiling = y(float(floors[place])), y(float(ceilings[place]))
+    ceilings = sliding_window_view(np.array([y for _, y in upper]), span)[::2].max(axis=1)
+    floors = sliding_window_view(np.array([y for _, y in lower]), span)[::2].min(axis=1)
+    place = int((floors - ceilings).argmax())
+    floor, ceiling = float(floors[place]), float(ceilings[place])
     if floor - ceiling < LEAST_LABEL_MM:
         return False
-    middle = x(place + span / 2)
-    drawing.text(middle, (floor + ceiling) / 2 + 0.9, band.name, fill=letters_on(band.colour), anchor="middle", bold=True)
+    drawing.text(
+        upper[2 * place][0] + span * pitch_mm / 4,
+        (floor + ceiling) / 2 + 0.9,
+        band.name,
+        fill=letters_on(band.colour),
+        anchor="middle",
+        bold=True,
+    )
     return True

@@ -13,8 +13,8 @@ from reports.charts.scales import month_axis, rounded_range
 Array = npt.NDArray[np.float64]
 
 WIDTH, LEFT = 126.0, 9.0
-TOP, HEIGHT = 6.0, 34.0
-STRIP_GAP, STRIP = 2.6, 8.0
+TOP, HEIGHT = 6.0, 27.0
+STRIP_GAP, STRIP = 2.2, 6.5
 HOURS = (0, 6, 12, 18, 24)
 SCALE_LEFT, SCALE_WIDTH = 80.0, 26.0
 

@@ -2,7 +2,6 @@
 
 from typing import Any
 
-from reports.charts.outcome import Bar, draw_outcome
 from reports.figures import Figures
 from reports.numbers import (
     THIN,
@@ -11,19 +10,15 @@ from reports.numbers import (
     number,
     percent,
     power,
-    significant,
     signed_percent,
+    significant,
     small_percent,
     unit_price,
 )
 from reports.results_folder import Facts, ResultsFolder
 from reports.sections.settle import to_settle
-from reports.wording import FACTORS, TESTS, capital_first, carrier, listed, with_article
-
-#: Steps shown in the picture, where the plan has them: fuel by a fifth, the rest as planned.
-SHOWN_FUEL_STEP = 0.2
-
-STEPPED = ("fuel_price", "power_price", "heat_demand", "capital", "boiler_efficiency")
+from reports.sections.tornado import outcome_figure
+from reports.wording import TESTS, carrier, listed, upper_first, with_article
 
 
 def answer(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
@@ -32,7 +27,7 @@ def answer(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
         "headline": headline(results),
         "lead": _lead(results),
         "keys": _keys(results),
-        "figure": _figure(results, figures),
+        "figure": outcome_figure(results, results.subject, figures),
         "rows": [
             ("With the unit out", _security(results.subject)),
             ("NOx", _nox(results.subject["nox"])),
@@ -40,7 +35,9 @@ def answer(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
             ("The saving assumes", _control(results)),
             ("What would change it", change(results)),
         ],
-        "settle_title": "Settle before signing" if results.is_advised else "Settle before looking again",
+        "settle_title": "Settle before signing"
+        if results.is_advised
+        else "Settle before looking again",
         "settle": to_settle(results),
     }
 
@@ -56,13 +53,13 @@ def headline(results: ResultsFolder) -> str:
     loses = f"lose {money(-npv, results.currency)}" if npv < 0.0 else "earn nothing"
     if not results.others:
         return f"Do not build {name}. It would {loses} over {life} years."
-    return f"Build none of them. The best would {loses} over {life} years."
+    return f"Build none of them. {upper_first(name)} comes nearest; it would {loses}."
 
 
 def _earned_back(payback_years: float | None, life: int) -> str:
     """Payback as a sentence."""
     if payback_years is None or payback_years > life:
-        return f"It earns its cost back only by what later years bring."
+        return "It earns its cost back only by what later years bring."
     if payback_years <= 0.0:
         return "It costs no more than what it makes needless."
     return f"It pays for itself in {number(payback_years, 1)} years."
@@ -75,21 +72,23 @@ def _lead(results: ResultsFolder) -> str:
     rate, life = percent(heading["discount_rate_real_frac"], 1), heading["life_years"]
     irr = economics["irr_real_frac"]
     returns = (
-        f"an internal rate of return of {percent(irr, 1)}"
+        f"its internal rate of return {percent(irr, 1)}"
         if irr is not None
-        else "no single internal rate of return"
+        else "and no single internal rate of return exists"
     )
-    worth = (
-        f"a net present value of {money(economics['npv_real'], currency)} over {life} years at "
-        f"{rate}, and {returns}, both real and before tax"
-    )
-    verdict = results.facts["verdict"]
+    verdict, running = results.facts["verdict"], option["running"]
     held, tried = verdict["holds_in_variants"], verdict["variants_tried"]
-    holds = f"The answer holds in {held} of {tried} variants tried." if tried else ""
-    if results.is_advised:
-        return f"{capital_first(with_article(option['name']))} has {worth}. {holds}"
-    best = "" if not results.others else f"Of {len(results.others) + 1} options the best is "
-    return f"{capital_first(best + with_article(option['name']))}: {worth}. {holds}"
+    holds = f" The answer holds in {held} of {tried} variants tried." if tried else ""
+    whose = "Its" if results.is_advised or not results.others else "The best one’s"
+    covers = (
+        f" It makes {percent(running['power_covered_frac'])} of the site’s power and "
+        f"{percent(running['heat_covered_frac'])} of its heat."
+    )
+    return (
+        f"{whose} net present value is {money(economics['npv_real'], currency)} over "
+        f"{life} years at "
+        f"{rate}, {returns}, both real and before tax.{covers}{holds}"
+    )
 
 
 def _keys(results: ResultsFolder) -> list[tuple[str, str, str]]:
@@ -106,8 +105,10 @@ def _keys(results: ResultsFolder) -> list[tuple[str, str, str]]:
         (
             cost,
             cost_unit,
-            f"capital, {capital['accuracy_class']} (±{percent(capital['accuracy_frac'])}); "
-            f"{money(capital['net'], currency)} net of what it avoids",
+            (
+                f"capital, {capital['accuracy_class']} (±{percent(capital['accuracy_frac'])}); "
+                f"{money(capital['net'], currency)} net of what it avoids"
+            ),
         ),
         _payback_key(economics, life),
         _carbon_key(option["carbon"], life),
@@ -117,7 +118,11 @@ def _keys(results: ResultsFolder) -> list[tuple[str, str, str]]:
 def _payback_key(economics: Facts, life: int) -> tuple[str, str, str]:
     """Simple payback, with the discounted beside it."""
     simple, later = economics["simple_payback_years"], economics["discounted_payback_years"]
-    discounted = f"discounted: in year {later}" if later is not None else f"discounted: not within {life} years"
+    discounted = (
+        f"discounted: in year {later}"
+        if later is not None
+        else f"discounted: not within {life} years"
+    )
     if simple is None or simple > life:
         return ("never", f"in {life} years", f"simple payback; {discounted}")
     return (number(simple, 1), "years", f"simple payback; {discounted}")
@@ -134,62 +139,11 @@ def _carbon_key(carbon: Facts, life: int) -> tuple[str, str, str]:
     else:
         until = f"each year’s saving ends after {stops - 1}"
     if tonnes < 0.0:
-        ended = "it saves in no year" if all(y["saved_t"] <= 0 for y in carbon["by_year"]) else until
+        ended = (
+            "it saves in no year" if all(y["saved_t"] <= 0 for y in carbon["by_year"]) else until
+        )
         return (value, f"t{THIN}CO₂", f"more than today over {life} years; {ended}")
     return (value, f"t{THIN}CO₂", f"saved over {life} years; {until}")
-
-
-def tornado_bars(option: Facts) -> list[Bar]:
-    """One bar an assumption, the widest first."""
-    bars = []
-    for factor in STEPPED:
-        variants = [v for v in option["variants"] if v["factor"] == factor]
-        low = _nearest([v for v in variants if v["change_frac"] < 0.0])
-        high = _nearest([v for v in variants if v["change_frac"] > 0.0])
-        if low is not None and high is not None:
-            bars.append(
-                Bar(FACTORS[factor], low["change_frac"], high["change_frac"], low["npv_real"], high["npv_real"])
-            )
-    return sorted(bars, key=_span, reverse=True)
-
-
-def _nearest(variants: list[Facts]) -> Facts | None:
-    """The variant whose step is nearest to the one shown."""
-    return min(variants, key=lambda v: abs(abs(v["change_frac"]) - SHOWN_FUEL_STEP), default=None)
-
-
-def _span(bar: Bar) -> float:
-    """Width of a bar; one without both ends has none."""
-    ends = [npv for npv, _ in bar.ends()]
-    return max(ends) - min(ends) if len(ends) > 1 else 0.0
-
-
-def _figure(results: ResultsFolder, figures: Figures) -> Any:
-    """How sure: the picture of page 1."""
-    option, planned = results.subject, results.subject["economics"]["npv_real"]
-    bars = tornado_bars(option)
-    combined = next((v for v in option["variants"] if v["factor"] == "combined_bad"), None)
-    combined_npv = None if combined is None else combined["npv_real"]
-    turned = [bar.name.lower() for bar in bars if any((npv > 0) != (planned > 0) for npv, _ in bar.ends())]
-    svg = draw_outcome(bars, planned_npv=planned, combined_npv=combined_npv, currency=results.currency)
-    end = "none was found" if combined_npv is None else money(combined_npv, results.currency)
-    return figures.add(
-        svg,
-        title=_figure_title(turned, planned),
-        see="What to see: the heavy line is break-even. Each bar moves one assumption and runs the "
-        f"year again. With all bad at once, NPV is {end}.",
-        alt=f"Net present value as planned {money(planned, results.currency)}; "
-        + "; ".join(f"{bar.name} {words}: {money(npv, results.currency)}" for bar in bars for npv, words in bar.ends())
-        + f"; all bad at once: {end}.",
-    )
-
-
-def _figure_title(turned: list[str], planned: float) -> str:
-    """What the picture shows, in one line."""
-    if not turned:
-        return "No single step undoes the case" if planned > 0 else "No single step rescues the case"
-    verb = "undo" if planned > 0 else "rescue"
-    return f"{capital_first(listed(turned))} alone can {verb} the case"
 
 
 def _security(option: Facts) -> str:
@@ -200,10 +154,16 @@ def _security(option: Facts) -> str:
         return f"Not met: grid and heaters fall short of the year’s peak of {listed(missing)}."
     if not option["security"]:
         return "The site has no demand to secure."
-    tight = min(option["security"], key=lambda line: line["margin_kW"] / max(line["capacity_kW"], 1e-9))
+    tight = min(
+        option["security"], key=lambda line: line["margin_kW"] / max(line["capacity_kW"], 1e-9)
+    )
     weak = [line for line in option["security"] if (line["margin_one_heater_out_kW"] or 0.0) < 0.0]
     more = (
-        f" With its largest heater out as well, {listed([carrier(line['carrier']) for line in weak])} is short."
+        (
+            " With its largest heater out as well, "
+            f"{listed([carrier(line['carrier']) for line in weak])} "
+            f"{'is' if len(weak) == 1 else 'are'} short."
+        )
         if weak
         else ""
     )
@@ -217,7 +177,8 @@ def _nox(nox: Facts) -> str:
     """NOx against its limit, with the margin."""
     limit, high = nox["limit_mg_per_Nm3"], nox["band_high_mg_per_Nm3"]
     return (
-        f"{capital_first(nox['status'])}: {number(nox['band_low_mg_per_Nm3'])} to {number(high)}{THIN}mg/Nm³, at the "
+        f"{upper_first(nox['status'])}: {number(nox['band_low_mg_per_Nm3'])} to "
+        f"{number(high)}{THIN}mg/Nm³, at the "
         f"upper edge {percent(high / limit)} of the limit of {number(limit)}{THIN}mg/Nm³ "
         f"(15{THIN}% O₂). The guarantee is {number(nox['guarantee_mg_per_Nm3'], 1)}."
     )
@@ -230,8 +191,10 @@ def _efficiency(efficiency: Facts) -> str:
         return f"{overall}; no legal test was asked for."
     verdict = "Met" if efficiency["met"] else "Not met"
     return (
-        f"{verdict}: {overall} ({percent(efficiency['required_overall_frac'])} asked), primary energy saving "
-        f"{percent(efficiency['primary_energy_saving_frac'], 1)} ({percent(efficiency['required_saving_frac'])} asked): "
+        f"{verdict}: {overall} ({percent(efficiency['required_overall_frac'])} asked), "
+        "primary energy saving "
+        f"{percent(efficiency['primary_energy_saving_frac'], 1)} "
+        f"({percent(efficiency['required_saving_frac'])} asked): "
         f"{TESTS.get(efficiency['test'], efficiency['test'])}."
     )
 
@@ -240,12 +203,16 @@ def _control(results: ResultsFolder) -> str:
     """Control, gap and fit, in money."""
     proof, currency = results.subject["proof"], results.currency
     foresight = (
-        "Perfect foresight: weather, demand and prices known in advance; a real controller earns less."
+        (
+            "Perfect foresight: weather, demand and prices known in advance; a real "
+            "controller earns less."
+        )
         if proof["control"] == "perfect foresight"
         else f"Control: {proof['control']}."
     )
     return (
-        f"{foresight} Proven gap {small_percent(proof['gap_frac'])} ({money(proof['gap_money'], currency)} a year); "
+        f"{foresight} Proven gap {small_percent(proof['gap_frac'])} "
+        f"({money(proof['gap_money'], currency)} a year); "
         f"simplifying the plant moves cost by {money(proof['fit_money'], currency)}."
     )
 
@@ -255,13 +222,13 @@ def change(results: ResultsFolder) -> str:
     point, currency = results.subject["break_even"], results.currency
     zero, price = point["npv_zero_fuel_price_frac"], point["npv_zero_commodity_per_hhv_kWh"]
     if zero is None or price is None:
-        tried = f"{signed_percent(point['tried_from_frac'])} to {signed_percent(point['tried_to_frac'])}"
+        tried = (
+            f"{signed_percent(point['tried_from_frac'])} to "
+            f"{signed_percent(point['tried_to_frac'])}"
+        )
         turn = "end the case" if results.is_advised else "make it pay"
         return f"No gas price from {tried} would {turn}."
-    if results.is_advised:
-        start = "It stops paying if"
-    else:
-        start = "It would begin to pay if"
+    start = "It stops paying if" if results.is_advised else "It would begin to pay if"
     way = "rose" if zero > 0 else "fell"
     saving_zero = point["saving_zero_fuel_price_frac"]
     also = (

@@ -46,7 +46,9 @@ def _groups(today: list[Facts], then: list[Facts]) -> list[dict[str, Any]]:
         {
             "name": SECTIONS[key],
             "rows": [_row(name, *pair) for name, pair in rows.items()],
-            "sum": _amounts(_sum(pair[0] for pair in rows.values()), _sum(pair[1] for pair in rows.values())),
+            "sum": _amounts(
+                _sum(pair[0] for pair in rows.values()), _sum(pair[1] for pair in rows.values())
+            ),
         }
         for key, rows in found.items()
         if rows
@@ -59,7 +61,12 @@ def _added(first: Facts | None, second: Facts) -> Facts:
         return second
     quantity = first["quantity"] + second["quantity"]
     amount = first["amount"] + second["amount"]
-    return {**first, "quantity": quantity, "amount": amount, "rate": amount / quantity if quantity else 0.0}
+    return {
+        **first,
+        "quantity": quantity,
+        "amount": amount,
+        "rate": amount / quantity if quantity else 0.0,
+    }
 
 
 def _sum(lines: Any) -> float:
@@ -114,13 +121,21 @@ def _bridge(results: ResultsFolder) -> list[tuple[str, str, str]]:
     outage, saving = economics["expected_outage_cost"], economics["annual_saving"]
     slack = today - then - outage - saving
     return [
-        ("Difference of the two bills", signed(today - then), "both years as dispatched, without breakdowns"),
+        (
+            "Difference of the two bills",
+            signed(today - then),
+            "both years as dispatched, without breakdowns",
+        ),
         (
             "Expected cost of breakdowns",
             signed(-outage),
             "forced outages, and demand charges that a trip loses",
         ),
-        ("Doubt about today’s cost", signed(-slack), "what its proven lower bound lies below its bill"),
+        (
+            "Doubt about today’s cost",
+            signed(-slack),
+            "what its proven lower bound lies below its bill",
+        ),
         ("Annual saving", signed(saving), "first full year, real, before capital, finance and tax"),
     ]
 

@@ -14,7 +14,7 @@ from reports.numbers import (
     unit_price,
 )
 from reports.results_folder import Facts, ResultsFolder
-from reports.wording import FACTORS, capital_first, carrier
+from reports.wording import FACTORS, carrier, upper_first
 
 NOTHING = "–"
 LEAST_POINTS = 2
@@ -61,17 +61,25 @@ def _curve(results: ResultsFolder, figures: Figures) -> Figure | None:
         title="Gas is the price that decides" if zero is not None else "No gas price tried decides",
         see="What to see: each dot is a year dispatched anew at that price, CHP and boilers alike. "
         "Transport, levies and carbon stay.",
-        alt="; ".join(f"gas {signed_percent(c)}: NPV {money(v, results.currency)}" for c, v in ordered),
+        alt="; ".join(
+            f"gas {signed_percent(c)}: NPV {money(v, results.currency)}" for c, v in ordered
+        ),
     )
 
 
 def _break_even(results: ResultsFolder) -> list[tuple[str, str, str]]:
     """The two break-even prices: what is zero, change, price."""
     point, currency = results.subject["break_even"], results.currency
-    tried = f"none between {signed_percent(point['tried_from_frac'])} and {signed_percent(point['tried_to_frac'])}"
+    tried = (
+        f"none between {signed_percent(point['tried_from_frac'])} and "
+        f"{signed_percent(point['tried_to_frac'])}"
+    )
     rows = []
     for what, key in (("NPV is zero", "npv"), ("Annual saving is zero", "saving")):
-        change, price = point[f"{key}_zero_fuel_price_frac"], point[f"{key}_zero_commodity_per_hhv_kWh"]
+        change, price = (
+            point[f"{key}_zero_fuel_price_frac"],
+            point[f"{key}_zero_commodity_per_hhv_kWh"],
+        )
         if change is None or price is None:
             rows.append((what, tried, NOTHING))
         else:
@@ -82,7 +90,11 @@ def _break_even(results: ResultsFolder) -> list[tuple[str, str, str]]:
 def _row(results: ResultsFolder, variant: Facts) -> dict[str, Any]:
     """One variant in figures."""
     currency = results.currency
-    step = NOTHING if variant["factor"] in ("base", "combined_bad") else signed_percent(variant["change_frac"], _places(variant["change_frac"]))
+    step = (
+        NOTHING
+        if variant["factor"] in ("base", "combined_bad")
+        else signed_percent(variant["change_frac"], _places(variant["change_frac"]))
+    )
     irr, hours, gap = variant["irr_real_frac"], variant["run_hours"], variant["gap_frac"]
     solved = variant["status"] == "solved"
     payback = variant["simple_payback_years"]
@@ -97,7 +109,11 @@ def _row(results: ResultsFolder, variant: Facts) -> dict[str, Any]:
             _or_nothing(hours, number),
             _or_nothing(gap, small_percent),
         ],
-        "status": "solved" if solved else f"failed: {variant['note']}" if variant["note"] else "failed",
+        "status": "solved"
+        if solved
+        else f"failed: {variant['note']}"
+        if variant["note"]
+        else "failed",
         "loses": variant["npv_real"] is not None and variant["npv_real"] <= 0.0,
         "strong": variant["factor"] in ("base", "combined_bad"),
     }
@@ -117,7 +133,7 @@ def _security_row(line: Facts) -> dict[str, Any]:
     """One carrier while the unit stands."""
     out = line["margin_one_heater_out_kW"]
     return {
-        "name": capital_first(carrier(line["carrier"])),
+        "name": upper_first(carrier(line["carrier"])),
         "cells": [
             power(line["peak_kW"]),
             power(line["capacity_kW"]),

@@ -35,7 +35,10 @@ def findings(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
             }
             for f in found
         ],
-        "defaults": [(d["path"], d["value"], real_subscripts(d["meaning"])) for d in results.facts["defaults"]],
+        "defaults": [
+            (d["path"], d["value"], real_subscripts(d["meaning"]))
+            for d in results.facts["defaults"]
+        ],
     }
 
 

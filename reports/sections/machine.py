@@ -6,7 +6,7 @@ from reports.charts.composite import draw_composite
 from reports.figures import Figure, Figures
 from reports.numbers import number, percent, power
 from reports.results_folder import Facts, ResultsFolder
-from reports.wording import capital_first
+from reports.wording import upper_first
 
 #: A sheet's books are taken to close within this range (share of fuel, LHV).
 AUDIT_FROM_FRAC, AUDIT_TO_FRAC = 0.0, 0.02
@@ -19,13 +19,20 @@ def machine(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
     closes = AUDIT_FROM_FRAC <= residual <= AUDIT_TO_FRAC
     verdict = "closes" if closes else "does not close"
     return {
-        "title": f"The data sheet’s energy balance {verdict}: {percent(residual, 1)} of fuel is left over",
+        "title": f"The sheet’s energy balance {verdict}: {percent(residual, 1)} of fuel is left",
         "name": record["name"],
-        "kind": "class value, not a maker’s offer" if record["generic"] else "guaranteed data sheet",
+        "kind": "class value, not a maker’s offer"
+        if record["generic"]
+        else "guaranteed data sheet",
         "sheet": _sheet(record),
         "model": _model(record),
         "stations": [
-            (station["station"], number(station["temperature_degC"]), number(station["pressure_kPa"]), number(station["flow_kg_per_s"], 2))
+            (
+                station["station"],
+                number(station["temperature_degC"]),
+                number(station["pressure_kPa"]),
+                number(station["flow_kg_per_s"], 2),
+            )
             for station in record["stations"]
         ],
         "points": [_point(point) for point in record["points"]],
@@ -38,10 +45,19 @@ def _sheet(record: Facts) -> list[tuple[str, str]]:
     return [
         ("Net power", f"{number(record['sheet_power_kW'])} kW"),
         ("Efficiency (LHV)", percent(record["sheet_efficiency_lhv_frac"], 1)),
-        ("Exhaust", f"{number(record['sheet_exhaust_flow_kg_per_s'], 1)} kg/s at {number(record['sheet_exhaust_degC'])} °C"),
+        (
+            "Exhaust",
+            (
+                f"{number(record['sheet_exhaust_flow_kg_per_s'], 1)} kg/s at "
+                f"{number(record['sheet_exhaust_degC'])} °C"
+            ),
+        ),
         ("Pressure ratio", number(record["pressure_ratio"], 1)),
         ("Minimum load", percent(record["minimum_load_frac"])),
-        ("Gas compressor, auxiliaries", f"{number(record['gas_compressor_kW'])} kW, {number(record['auxiliary_kW'])} kW"),
+        (
+            "Gas compressor, auxiliaries",
+            f"{number(record['gas_compressor_kW'])} kW, {number(record['auxiliary_kW'])} kW",
+        ),
     ]
 
 
@@ -53,7 +69,7 @@ def _model(record: Facts) -> list[tuple[str, str]]:
         ("Polytropic efficiency", percent(record["polytropic_efficiency"], 1)),
         ("Mixed firing temperature", f"{number(record['firing_degC'])} °C"),
         ("Stack", f"{number(record['stack_degC'])} °C"),
-        ("Ways of the exhaust", capital_first(paths) or "bypass only"),
+        ("Ways of the exhaust", upper_first(paths) or "bypass only"),
         ("Straight pieces in the dispatch", str(record["fit_segments"])),
     ]
 
@@ -82,7 +98,11 @@ def _composite(record: Facts, figures: Figures) -> Figure | None:
     return figures.add(
         draw_composite(gas, sink),
         title=f"{power(gas[-1][0])} of heat down to {number(gas[-1][1])}\u202f°C at the stack",
-        see="What to see: the two lines may come near but never cross; where they are closest is the pinch "
+        see="What to see: the two lines may come near but never cross; where they are "
+        "closest is the pinch "
         "that limits recovery.",
-        alt=f"Exhaust cooled from {number(gas[0][1])} to {number(gas[-1][1])} degrees while it gives up {power(gas[-1][0])}.",
+        alt=(
+            f"Exhaust cooled from {number(gas[0][1])} to {number(gas[-1][1])} degrees while "
+            f"it gives up {power(gas[-1][0])}."
+        ),
     )

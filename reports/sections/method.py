@@ -21,8 +21,10 @@ def method(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
         "step": f"{results.step_h:g}",
         "power_lines": [real_subscripts(line) for line in tariffs["power_lines"]],
         "gas_lines": [real_subscripts(line) for line in tariffs["gas_lines"]],
-        "gas": f"{tariffs['fuel_name']}, LHV {number(tariffs['lhv_MJ_per_kg'], 2)} MJ/kg, HHV/LHV {number(tariffs['hhv_over_lhv'], 4)}; all in "
-        f"{unit_price(tariffs['all_in_gas_per_lhv_kWh'], currency)} (LHV) on average, power {unit_price(tariffs['mean_import_per_kWh'], currency)}",
+        "gas": f"{tariffs['fuel_name']}, LHV {number(tariffs['lhv_MJ_per_kg'], 2)} MJ/kg, "
+        f"HHV/LHV {number(tariffs['hhv_over_lhv'], 4)}; all in "
+        f"{unit_price(tariffs['all_in_gas_per_lhv_kWh'], currency)} (LHV) on average, "
+        f"power {unit_price(tariffs['mean_import_per_kWh'], currency)}",
         "proof": [
             (
                 name,
@@ -33,9 +35,12 @@ def method(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
             )
             for name, p in (("Today", today), (option["name"], proof))
         ],
-        "fit": f"fuel {signed_percent(proof['fit_fuel_frac'], 2)}, heat {signed_percent(proof['fit_heat_frac'], 2)}, "
+        "fit": f"fuel {signed_percent(proof['fit_fuel_frac'], 2)}, heat "
+        f"{signed_percent(proof['fit_heat_frac'], 2)}, "
         f"cost {money(proof['fit_money'], currency)} a year",
         "has_store": has_store(option),
-        "has_hot_gas": any(line["carrier"] == "hot_gas" for line in results.facts["demand"]["carriers"]),
+        "has_hot_gas": any(
+            line["carrier"] == "hot_gas" for line in results.facts["demand"]["carriers"]
+        ),
         "test": option["efficiency"]["test"],
     }

@@ -43,9 +43,11 @@ def money(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
         "figure": figures.add(
             draw_cash(flow, currency),
             title=f"Over {heading['life_years']} years it is worth {amount(npv, currency)}",
-            see="What to see: bars are each year’s money, lines their sum; where the dark line ends is the "
+            see="What to see: bars are each year’s money, lines their sum; where the dark line "
+            "ends is the "
             "NPV. Price paths, wear and replaced plant are in it.",
-            alt=f"Net cash flow by year; first {amount(flow[0]['net'], currency)}, then {amount(flow[1]['net'], currency)} "
+            alt=f"Net cash flow by year; first {amount(flow[0]['net'], currency)}, then "
+            f"{amount(flow[1]['net'], currency)} "
             f"in the first full year; discounted balance at the end {amount(npv, currency)}.",
         ),
         "capital": _capital(economics["capital"], currency),
@@ -56,16 +58,23 @@ def money(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
 def _capital(capital: Facts, currency: str) -> dict[str, Any]:
     """Capital by line, and what it avoids."""
     total = capital["total"]
-    avoided = [(real_subscripts(line["line"]), number(-line["cost"])) for line in capital["avoided"]]
+    avoided = [
+        (real_subscripts(line["line"]), number(-line["cost"])) for line in capital["avoided"]
+    ]
     return {
         "lines": [
-            (capital_line(line["line"]), number(line["cost"]), percent(line["cost"] / total if total else 0.0))
+            (
+                capital_line(line["line"]),
+                number(line["cost"]),
+                percent(line["cost"] / total if total else 0.0),
+            )
             for line in capital["lines"]
         ],
         "total": number(total),
         "avoided": avoided,
         "net": number(capital["net"]),
-        "note": f"{capital['accuracy_class']}, ±{percent(capital['accuracy_frac'])}; what is avoided "
+        "note": f"{capital['accuracy_class']}, ±{percent(capital['accuracy_frac'])}; what is "
+        "avoided "
         f"is worth {amount(capital['avoided_present_value'], currency)} today.",
     }
 
@@ -75,6 +84,7 @@ def _table(flow: list[Facts], currency: str) -> dict[str, Any]:
     largest = max(abs(year[key]) for year in flow for key in COLUMNS)
     _, word = money_scale(largest)
     rows = [
-        (year["calendar_year"], [number(year[key] / 1e3) for key in COLUMNS], year["year"]) for year in flow
+        (year["calendar_year"], [number(year[key] / 1e3) for key in COLUMNS], year["year"])
+        for year in flow
     ]
     return {"rows": rows, "unit": f"{currency} thousand" if word else currency}

@@ -7,31 +7,35 @@ from reports.charts.bill_bars import draw_bill_bars
 from reports.figures import Figures
 from reports.numbers import money, number, percent, signed_percent, significant, unit_price, years
 from reports.results_folder import Facts, ResultsFolder
+from reports.sections.tornado import outcome_figure
 from reports.wording import real_subscripts, with_article
 
 
 def options(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
     """A table of all options, their bills as bars, and each one that is not advised."""
     ordered = sorted(results.facts["options"], key=lambda option: -option["economics"]["npv_real"])
-    rejected = [option for option in ordered if not results.is_advised or option is not results.subject]
+    rejected = [
+        option for option in ordered if not results.is_advised or option is not results.subject
+    ]
     return {
-        "title": _title(results, ordered),
+        "title": _title(ordered),
         "rule": results.facts["verdict"]["rule"],
         "rows": [_row(results, option) for option in ordered],
         "figure": _bars(results, ordered, figures),
-        "rejected": [_rejected(results, option) for option in rejected],
+        "rejected": [_rejected(results, option, figures) for option in rejected],
     }
 
 
-def _title(results: ResultsFolder, ordered: list[Facts]) -> str:
+def _title(ordered: list[Facts]) -> str:
     """How many pay."""
     paying = sum(option["economics"]["npv_real"] > 0.0 for option in ordered)
     if len(ordered) == 1:
         return "The one option pays" if paying else "The one option does not pay"
     if not paying:
-        return f"None of {len(ordered)} options earns its capital back"
+        none = "Neither option" if len(ordered) == 2 else f"None of {len(ordered)} options"  # noqa: PLR2004 - both
+        return f"{none} earns its capital back"
     if paying == len(ordered):
-        return f"All {len(ordered)} options pay; one pays most"
+        return "Both options pay" if len(ordered) == 2 else f"All {len(ordered)} options pay"  # noqa: PLR2004 - both
     return f"{paying} of {len(ordered)} options {'pays' if paying == 1 else 'pay'}"
 
 
@@ -75,13 +79,14 @@ def _bars(results: ResultsFolder, ordered: list[Facts], figures: Figures) -> Any
     return figures.add(
         draw_bill_bars(rows, results.currency),
         title="What is paid for, today and with each option",
-        see="What to see: the number at each end is the year’s bill before capital. CHP trades power "
+        see="What to see: the number at each end is the year’s bill before capital. CHP "
+        "trades power "
         "for gas; what is gained is the difference.",
         alt="; ".join(f"{name}: {money(total, results.currency)} a year" for name, total in totals),
     )
 
 
-def _rejected(results: ResultsFolder, option: Facts) -> dict[str, Any]:
+def _rejected(results: ResultsFolder, option: Facts, figures: Figures) -> dict[str, Any]:
     """Half a page on an option that is not advised."""
     economics, running = option["economics"], option["running"]
     machine, currency = option["machine"], results.currency
@@ -91,13 +96,35 @@ def _rejected(results: ResultsFolder, option: Facts) -> dict[str, Any]:
         "name": option["name"],
         "description": real_subscripts(option["description"]),
         "why": _why(results, option),
+        "figure": None if option is results.subject else outcome_figure(results, option, figures),
         "facts": [
             ("Runs", f"{number(running['run_hours'])} h, {number(running['starts'])} starts"),
-            ("Covers", f"{percent(running['power_covered_frac'])} of power, {percent(running['heat_covered_frac'])} of heat"),
-            ("Efficiency", f"{percent(option['efficiency']['electrical_lhv_frac'], 1)} power, {percent(option['efficiency']['overall_lhv_frac'], 1)} overall (LHV)"),
+            (
+                "Covers",
+                (
+                    f"{percent(running['power_covered_frac'])} of power, "
+                    f"{percent(running['heat_covered_frac'])} of heat"
+                ),
+            ),
+            (
+                "Efficiency",
+                (
+                    f"{percent(option['efficiency']['electrical_lhv_frac'], 1)} power, "
+                    f"{percent(option['efficiency']['overall_lhv_frac'], 1)} overall (LHV)"
+                ),
+            ),
             ("Sheet audit", f"{percent(machine['audit_residual_frac'], 1)} of fuel unexplained"),
-            ("NOx", f"{number(option['nox']['band_high_mg_per_Nm3'])} of {number(option['nox']['limit_mg_per_Nm3'])} mg/Nm³: {option['nox']['status']}"),
-            ("All bad at once", "no schedule found" if bad is None else f"NPV {money(bad, currency)}"),
+            (
+                "NOx",
+                (
+                    f"{number(option['nox']['band_high_mg_per_Nm3'])} of "
+                    f"{number(option['nox']['limit_mg_per_Nm3'])} mg/Nm³: {option['nox']['status']}"
+                ),
+            ),
+            (
+                "All bad at once",
+                "no schedule found" if bad is None else f"NPV {money(bad, currency)}",
+            ),
             ("Discounted payback", _discounted(economics, results.heading["life_years"])),
             ("NPV is zero", _zero(option, currency)),
         ],
@@ -134,7 +161,8 @@ def _why(results: ResultsFolder, option: Facts) -> str:
     saving = economics["annual_saving"]
     if saving <= 0.0:
         return (
-            f"It costs {money(-saving, currency)} a year more than today before any capital: gas, carbon "
+            f"It costs {money(-saving, currency)} a year more than today before any "
+            "capital: gas, carbon "
             "and upkeep take more than the power and heat are worth."
         )
     irr = economics["irr_real_frac"]

@@ -13,7 +13,7 @@ from reports.figures import Figure, Figures
 from reports.flows import column, direct_kW, heat_demand_kW, heaters_kW
 from reports.numbers import energy, number, percent, power
 from reports.results_folder import Facts, ResultsFolder
-from reports.wording import GRADES, capital_first, carrier, heaters_name
+from reports.wording import GRADES, exhaust_heat, heaters_name, upper_first
 
 
 def plant(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
@@ -22,7 +22,8 @@ def plant(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
     running = option["running"]
     return {
         "title": f"It runs {number(running['run_hours'])} hours and carries "
-        f"{percent(running['power_covered_frac'])} of power, {percent(running['heat_covered_frac'])} of heat",
+        f"{percent(running['power_covered_frac'])} of power, "
+        f"{percent(running['heat_covered_frac'])} of heat",
         "map": _operating_map(results, figures),
         "shares": _shares(results, figures),
         "flow": _energy_flow(results, figures),
@@ -38,7 +39,7 @@ def _operating_map(results: ResultsFolder, figures: Figures) -> Figure:
     made_kW = column(frame, "unit_power_kW")
     hours = column(frame, "unit_on").reshape(-1, results.steps_a_day).sum(axis=1) * results.step_h
     idle = int((hours == 0.0).sum())
-    whole = int((hours >= 24.0 - 1e-9).sum())  # noqa: PLR2004 - a day
+    whole = int((hours >= 24.0 - 1e-9).sum())
     svg = draw_year_map(
         made_kW,
         steps_a_day=results.steps_a_day,
@@ -52,9 +53,13 @@ def _operating_map(results: ResultsFolder, figures: Figures) -> Figure:
     return figures.add(
         svg,
         title="When the unit runs, and how hard",
-        see=f"What to see: pale is standing. It starts {number(running['starts'])} times, runs round the clock on "
+        see=f"What to see: pale is standing. It starts {number(running['starts'])} times, "
+        "runs round the clock on "
         f"{number(whole)} days and stands still on {number(idle)}, planned service included.",
-        alt=f"Map of the unit's net power by hour and day; {number(running['run_hours'])} hours of running.",
+        alt=(
+            f"Map of the unit's net power by hour and day; {number(running['run_hours'])} "
+            "hours of running."
+        ),
     )
 
 
@@ -65,22 +70,30 @@ def _shares(results: ResultsFolder, figures: Figures) -> Figure | None:
     if not demand_kW.any():
         return None
     parts = [
-        Curve(f"Exhaust: {carrier(grade)}", direct_kW(frame, grade), palette.RECOVERED[grade])
+        Curve(exhaust_heat(grade), direct_kW(frame, grade), palette.RECOVERED[grade])
         for grade in GRADES
         if direct_kW(frame, grade).any()
     ]
     discharge = column(frame, "store_discharge_kW")
     if discharge.any():
         parts.append(Curve("Store", discharge, palette.STORE))
-    rest = np.clip(demand_kW - np.sum([p.values_kW for p in parts], axis=0), 0, None) if parts else heaters_kW(frame)
-    parts.append(Curve(capital_first(heaters_name(results.facts)), rest, palette.HEATERS))
+    rest = (
+        np.clip(demand_kW - np.sum([p.values_kW for p in parts], axis=0), 0, None)
+        if parts
+        else heaters_kW(frame)
+    )
+    parts.append(Curve(upper_first(heaters_name(results.facts)), rest, palette.HEATERS))
     running = results.subject["running"]
     return figures.add(
         draw_shares(demand_kW, parts, results.step_h),
         title=f"The exhaust carries {percent(running['heat_covered_frac'])} of the heat",
-        see="What to see: hours are ordered by heat demand, the largest left; below the line, what met "
+        see="What to see: hours are ordered by heat demand, the largest left; below the "
+        "line, what met "
         "it, evened out over neighbours.",
-        alt=f"Heat duration curve with peak {power(float(demand_kW.max()))}, filled by what carries it.",
+        alt=(
+            f"Heat duration curve with peak {power(float(demand_kW.max()))}, filled by what "
+            "carries it."
+        ),
     )
 
 
@@ -90,7 +103,8 @@ def _energy_flow(results: ResultsFolder, figures: Figures) -> Figure:
     fuel = record["unit_fuel_lhv_kWh"]
     used = sum(record["recovered_kWh"].values()) - sum(record["dumped_kWh"].values())
     see = (
-        f"What to see: of 100 units of gas in the turbine, {number(100.0 * record['power_made_kWh'] / fuel)} leave as power "
+        "What to see: of 100 units of gas in the turbine, "
+        f"{number(100.0 * record['power_made_kWh'] / fuel)} leave as power "
         f"and {number(100.0 * used / fuel)} as heat that the site uses."
         if fuel > 0.0
         else "What to see: the unit never runs."
@@ -99,7 +113,8 @@ def _energy_flow(results: ResultsFolder, figures: Figures) -> Figure:
         draw_energy_flow(record, heaters_name(results.facts)),
         title="Where the energy goes",
         see=see,
-        alt=f"Energy of a year: gas to the unit {energy(fuel)}, power made {energy(record['power_made_kWh'])}, "
+        alt=f"Energy of a year: gas to the unit {energy(fuel)}, power made "
+        f"{energy(record['power_made_kWh'])}, "
         f"heat recovered and used {energy(used)}, grid import {energy(record['grid_import_kWh'])}.",
     )
 
@@ -110,16 +125,55 @@ def _facts(option: Facts) -> list[tuple[str, str]]:
     dumped = sum(record["dumped_kWh"].values())
     recovered = sum(record["recovered_kWh"].values())
     rows = [
-        ("Running", f"{number(running['run_hours'])} h in {number(running['starts'])} starts, at {percent(running['mean_load_frac'])} of what was possible; {number(running['full_load_hours'])} full-load hours"),
-        ("Power", f"{energy(record['power_made_kWh'])} made, {energy(record['grid_import_kWh'])} imported, {energy(record['grid_export_kWh'])} exported"),
-        ("Heat", f"{energy(recovered)} offered by the exhaust, of which {energy(dumped)} found no use"),
-        ("Fuel (LHV)", f"{energy(record['unit_fuel_lhv_kWh'])} in the unit, of which {energy(record['start_fuel_lhv_kWh'])} for starts; {energy(record['heater_fuel_lhv_kWh'])} in the heaters"),
+        (
+            "Running",
+            (
+                f"{number(running['run_hours'])} h in {number(running['starts'])} starts, at "
+                f"{percent(running['mean_load_frac'])} of what was possible; "
+                f"{number(running['full_load_hours'])} full-load hours"
+            ),
+        ),
+        (
+            "Power",
+            (
+                f"{energy(record['power_made_kWh'])} made, {energy(record['grid_import_kWh'])} "
+                f"imported, {energy(record['grid_export_kWh'])} exported"
+            ),
+        ),
+        (
+            "Heat",
+            f"{energy(recovered)} offered by the exhaust, of which {energy(dumped)} found no use",
+        ),
+        (
+            "Fuel (LHV)",
+            (
+                f"{energy(record['unit_fuel_lhv_kWh'])} in the unit, of which "
+                f"{energy(record['start_fuel_lhv_kWh'])} for starts; "
+                f"{energy(record['heater_fuel_lhv_kWh'])} in the heaters"
+            ),
+        ),
     ]
     if record["store_charged_kWh"] > 0.0:
-        lost = record["store_charged_kWh"] - record["store_discharged_kWh"]
-        rows.append(("Store", f"{energy(record['store_charged_kWh'])} charged, {energy(record['store_discharged_kWh'])} given back; {energy(max(lost, 0.0))} lost or left"))
+        charged, given_back = record["store_charged_kWh"], record["store_discharged_kWh"]
+        rows.append(
+            (
+                "Store",
+                (
+                    f"{energy(charged)} charged, {energy(given_back)} given back; "
+                    f"{energy(max(charged - given_back, 0.0))} lost or left"
+                ),
+            )
+        )
     if record["absorption_cooling_kWh"] > 0.0:
-        rows.append(("Cooling", f"{energy(record['absorption_cooling_kWh'])} by absorption, {energy(record['electric_cooling_kWh'])} by electric chillers"))
+        rows.append(
+            (
+                "Cooling",
+                (
+                    f"{energy(record['absorption_cooling_kWh'])} by absorption, "
+                    f"{energy(record['electric_cooling_kWh'])} by electric chillers"
+                ),
+            )
+        )
     return rows
 
 

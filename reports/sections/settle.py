@@ -57,8 +57,10 @@ def _limits(results: ResultsFolder) -> Iterator[str]:
 
 def _findings(results: ResultsFolder) -> Iterator[str]:
     """Serious findings that say what to do."""
+    others = [option["name"] for option in results.others]
     for finding in results.facts["findings"]:
-        if finding["severity"] == "serious" and finding["advice"]:
+        elsewhere = any(finding["where"].startswith(name) for name in others)
+        if finding["severity"] == "serious" and finding["advice"] and not elsewhere:
             yield f"{finding['where']}: {finding['advice']}"
 
 

@@ -19,7 +19,10 @@ def sources(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
         "pressure": bool(taken & {"steam", "hot_water"}),
         "exports": any(option["energy"]["grid_export_kWh"] > 0.0 for option in options),
         "regimes": sorted({option["nox"]["regime_source"] for option in options}),
-        "inputs": [(file["file"], number(file["bytes"]), _in_groups(file["sha256"])) for file in results.facts["inputs"]],
+        "inputs": [
+            (file["file"], number(file["bytes"]), _in_groups(file["sha256"]))
+            for file in results.facts["inputs"]
+        ],
         "version": results.facts["flueprint_version"],
         "made": str(results.facts["made_at_utc"])[:16].replace("T", " "),
     }
