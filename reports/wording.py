@@ -69,6 +69,20 @@ def listed(words: Sequence[str]) -> str:
     return f"{', '.join(words[:-1])} and {words[-1]}"
 
 
+def shortened(text: str, letters: int) -> str:
+    """A text that must fit, cut at a word where it is too long.
+
+    Examples
+    --------
+    >>> shortened("a turbine with a store", 15)
+    'a turbine with…'
+    """
+    if len(text) <= letters:
+        return text
+    cut = text[: letters - 1]
+    return (cut.rsplit(" ", 1)[0] if " " in cut else cut) + "…"
+
+
 def real_subscripts(text: str) -> str:
     """CO2 as it is written in print."""
     return text.replace("CO2", "CO₂").replace("Nm3", "Nm³")

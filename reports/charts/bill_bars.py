@@ -15,10 +15,14 @@ from reports.charts.palette import (
 )
 from reports.charts.scales import Scale
 from reports.numbers import money_scale, significant
+from reports.wording import shortened
 
 WIDTH, LEFT, TOP, STEP, BAR = 126.0, 0.0, 8.0, 11.5, 4.6
 COLOURS = {"power": IMPORT, "gas": FUEL, "carbon": HEATERS, "upkeep": HEAT_LOW, "export": EXPORT}
 NAMES = {"power": "Power", "gas": "Gas", "carbon": "Carbon", "upkeep": "Upkeep", "export": "Export"}
+
+#: Letters of a name that fit over its bar.
+LONGEST_NAME = 56
 
 Row = tuple[str, dict[str, float]]
 
@@ -56,7 +60,7 @@ def draw_bill_bars(rows: Sequence[Row], currency: str) -> str:
 
 def _row(drawing: Drawing, x: Scale, y: float, name: str, amounts: dict[str, float]) -> None:
     """One bill: its name above, its bands, its total at the end."""
-    drawing.text(x(0.0) + 0.6, y + 1.6, name, size_pt=NAME_PT, bold=True)
+    drawing.text(x(0.0) + 0.6, y + 1.6, shortened(name, LONGEST_NAME), size_pt=NAME_PT, bold=True)
     right = left = 0.0
     for key in NAMES:
         amount = amounts.get(key, 0.0)

@@ -89,7 +89,7 @@ def _range_around_zero(low: float, high: float) -> tuple[float, float]:
 def _zero(drawing: Drawing, x: float, y: float, change: str, *, right: bool) -> None:
     """The crossing and its name, beside it where the curve leaves room."""
     drawing.dot(x, y, 1.3, LOSING)
-    words = f"stops paying at {change}"
+    words = f"NPV is zero at {change}"
     drawing.label(
         x + 2.0 if right else x - 2.0,
         y + 4.0 if not right else y - 2.0,

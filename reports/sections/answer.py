@@ -20,11 +20,15 @@ from reports.sections.settle import to_settle
 from reports.sections.tornado import outcome_figure
 from reports.wording import TESTS, carrier, listed, upper_first, with_article
 
+#: Headlines above these lengths are set smaller.
+LONG_HEADLINE, LONGEST_HEADLINE, LONGEST_WORD = 84, 116, 30
+
 
 def answer(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
     """Everything on page 1."""
     return {
         "headline": headline(results),
+        "size": _size(headline(results)),
         "lead": _lead(results),
         "keys": _keys(results),
         "figure": outcome_figure(results, results.subject, figures),
@@ -54,6 +58,13 @@ def headline(results: ResultsFolder) -> str:
     if not results.others:
         return f"Do not build {name}. It would {loses} over {life} years."
     return f"Build none of them. {upper_first(name)} comes nearest; it would {loses}."
+
+
+def _size(words: str) -> str:
+    """Letters grow smaller as the headline grows longer, so that page 1 stays one page."""
+    if len(words) > LONGEST_HEADLINE or max(map(len, words.split())) > LONGEST_WORD:
+        return "longest"
+    return "long" if len(words) > LONG_HEADLINE else ""
 
 
 def _earned_back(payback_years: float | None, life: int) -> str:

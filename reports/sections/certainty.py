@@ -38,7 +38,7 @@ def _title(results: ResultsFolder) -> str:
     verdict = results.facts["verdict"]
     held, tried = verdict["holds_in_variants"], verdict["variants_tried"]
     if not tried:
-        return "No variant was tried"
+        return "No variant gave an answer"
     sign = "pays" if results.is_advised else "loses"
     if held == tried:
         return f"It {sign} in every one of {tried} variants"

@@ -5,7 +5,7 @@ from typing import Any
 from reports.figures import Figures
 from reports.numbers import count
 from reports.results_folder import ResultsFolder
-from reports.wording import real_subscripts
+from reports.wording import real_subscripts, upper_first
 
 SEVERITIES = ("serious", "attention", "note")
 STAGES = {
@@ -29,7 +29,7 @@ def findings(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
                 "severity": f["severity"],
                 "stage": STAGES[f["stage"]],
                 "where": f["where"],
-                "what": real_subscripts(f["what"]),
+                "what": upper_first(real_subscripts(f["what"])),
                 "effect": real_subscripts(f["effect"]),
                 "advice": real_subscripts(f["advice"]),
             }

@@ -4,10 +4,13 @@ from collections.abc import Iterator
 
 from reports.numbers import number, percent, power, signed_percent
 from reports.results_folder import ResultsFolder
-from reports.wording import carrier, listed
+from reports.wording import carrier, listed, shortened
 
 #: Points that fit on page 1.
 MOST = 3
+
+#: Letters of a point that fit on page 1; the findings have it in full.
+LONGEST_POINT = 170
 
 #: A break-even nearer than this asks for a contract.
 NEAR_BREAK_EVEN_FRAC = 0.25
@@ -27,7 +30,7 @@ def to_settle(results: ResultsFolder) -> list[str]:
         At most `MOST` sentences, at least one.
     """
     points = [*_shortfalls(results), *_limits(results), *_findings(results), *_basis(results)]
-    return list(dict.fromkeys(points))[:MOST]
+    return [shortened(point, LONGEST_POINT) for point in dict.fromkeys(points)][:MOST]
 
 
 def _shortfalls(results: ResultsFolder) -> Iterator[str]:

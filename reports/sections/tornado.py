@@ -64,16 +64,13 @@ def outcome_figure(results: ResultsFolder, option: Facts, figures: Figures) -> F
     bars = tornado_bars(option)
     combined = next((v for v in option["variants"] if v["factor"] == "combined_bad"), None)
     combined_npv = None if combined is None else combined["npv_real"]
-    turned = [
-        bar.name.lower() for bar in bars if any((npv > 0) != (planned > 0) for npv, _ in bar.ends())
-    ]
     svg = draw_outcome(
         bars, planned_npv=planned, combined_npv=combined_npv, currency=results.currency
     )
     end = "none was found" if combined_npv is None else money(combined_npv, results.currency)
     return figures.add(
         svg,
-        title=_title(turned, planned),
+        title=_title(bars, planned),
         see="What to see: the heavy line is break-even. Each bar moves one assumption and runs the "
         f"year again. With all bad at once, NPV is {end}.",
         alt=f"Net present value as planned {money(planned, results.currency)}; "
@@ -86,11 +83,16 @@ def outcome_figure(results: ResultsFolder, option: Facts, figures: Figures) -> F
     )
 
 
-def _title(turned: list[str], planned: float) -> str:
+def _title(bars: list[Bar], planned: float) -> str:
     """What the picture shows, in one line."""
+    if not any(bar.ends() for bar in bars):
+        return "No variant gave an answer"
+    verb = "undo" if planned > 0.0 else "rescue"
+    turned = [
+        bar.name.lower()
+        for bar in bars
+        if any((npv > 0.0) != (planned > 0.0) for npv, _ in bar.ends())
+    ]
     if not turned:
-        return (
-            "No single step undoes the case" if planned > 0 else "No single step rescues the case"
-        )
-    verb = "undo" if planned > 0 else "rescue"
+        return f"No single step can {verb} the case"
     return f"{upper_first(listed(turned))} alone can {verb} the case"
