@@ -97,7 +97,7 @@ def evaluate(
         year_prices,
         site_year.hourly,
         gap_frac=REPORT_GAP_FRAC if for_report else VARIANT_GAP_FRAC,
-        certified=for_report,
+        duals=for_report,
     )
     verify(schedule, plant.envelope, year_prices, site_year.hourly)
     flows = exact_flows(

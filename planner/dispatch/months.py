@@ -1,20 +1,27 @@
-"""Months solved apart: commitments to try, and a bound that holds for the year.
+"""Months solved apart: a state to try, and a bound that holds for the year.
 
 Cut at the borders of billing months, a year falls into pieces that share only the unit's state and
 the store's level. With both left free at every border, and the level priced there alike on either
 side, the pieces' bounds add up to a bound on the year, whatever the prices of the level.
 """
 
+import time
+from collections.abc import Callable, Iterator
 from dataclasses import dataclass, replace
+from itertools import pairwise
 
 import numpy as np
+from loky import ProcessPoolExecutor
 
 from planner.arrays import BoolArray, FloatArray, IntArray
+from planner.dispatch.hull_program import build_hull
 from planner.dispatch.window import Window, part_of
-from planner.dispatch.year_program import build
 
 #: Steps of a piece where no charge cuts the year.
 STEPS_WITHOUT_PERIODS = 730
+
+#: Where time ends before a month has a schedule, steps run whose relaxed state is above this.
+HALF_ON = 0.5
 
 
 @dataclass(frozen=True)
@@ -27,10 +34,23 @@ class MonthsAnswer:
         Proven lower bound on the year's cost.
     on : array of bool, shape (steps,)
         State of the unit, month after month.
+    in_time : bool
+        Whether every month came to its gap before its time was over.
     """
 
     bound: float
     on: BoolArray
+    in_time: bool
+
+
+@dataclass(frozen=True)
+class _Piece:
+    """What one process needs to solve a month."""
+
+    window: Window
+    start_value: float
+    end_value: float
+    gap_frac: float
 
 
 def borders(year: Window) -> IntArray:
@@ -56,7 +76,13 @@ def borders(year: Window) -> IntArray:
 
 
 def solve_months(
-    year: Window, level_values: FloatArray, *, gap_frac: float, time_limit_s: float
+    year: Window,
+    level_values: FloatArray,
+    *,
+    gap_frac: float,
+    time_limit_s: float,
+    processes: int = 1,
+    progress: Callable[[float], None] = lambda _: None,
 ) -> MonthsAnswer:
     """Solve every piece of a year.
 
@@ -70,6 +96,10 @@ def solve_months(
         Gap at which a piece is good enough.
     time_limit_s : float [s]
         For all pieces together.
+    processes : int
+        Pieces solved at once.
+    progress : callable
+        Told the share that is done.
 
     Returns
     -------
@@ -77,22 +107,57 @@ def solve_months(
         Bound and state.
     """
     cuts = borders(year)
+    pieces = list(_pieces(year, cuts, level_values, gap_frac))
     on = np.zeros(year.steps, dtype=bool)
-    bound = 0.0
-    seen: set[int] = set()
-    for number, (first, after) in enumerate(zip(cuts[:-1], cuts[1:], strict=True)):
-        piece = _without_seen_periods(part_of(year, int(first), int(after - first)), seen)
-        built = build(
-            piece,
-            start_value=float(level_values[number]),
-            end_value=float(level_values[number + 1]),
-        )
-        share = (after - first) / year.steps
-        answer = built.program.solve(gap_frac=gap_frac, time_limit_s=time_limit_s * share)
+    bound, in_time = 0.0, True
+    for number, answer in _answers(pieces, time_limit_s, processes):
+        on[cuts[number] : cuts[number + 1]] = answer.on
         bound += answer.bound
-        if built.columns.on is not None:
-            on[first:after] = answer.values[built.columns.on] > 0.5  # noqa: PLR2004 - a whole number
-    return MonthsAnswer(bound, on)
+        in_time &= answer.in_time
+        progress((number + 1) / len(pieces))
+    return MonthsAnswer(bound, on, in_time)
+
+
+def _pieces(
+    year: Window, cuts: IntArray, level_values: FloatArray, gap_frac: float
+) -> Iterator[_Piece]:
+    """The year's pieces, in order."""
+    seen: set[int] = set()
+    for number, (first, after) in enumerate(pairwise(cuts)):
+        window = _without_seen_periods(part_of(year, int(first), int(after - first)), seen)
+        values = float(level_values[number]), float(level_values[number + 1])
+        yield _Piece(window, *values, gap_frac=gap_frac)
+
+
+def _answers(
+    pieces: list[_Piece], time_limit_s: float, processes: int
+) -> Iterator[tuple[int, MonthsAnswer]]:
+    """Answers in the order of the pieces; alone, each leaves the time it did not need."""
+    if processes > 1:
+        limit_s = time_limit_s * processes / len(pieces)
+        with ProcessPoolExecutor(processes) as pool:
+            yield from enumerate(pool.map(_solve_piece, pieces, [limit_s] * len(pieces)))
+        return
+    deadline = time.perf_counter() + time_limit_s
+    for number, piece in enumerate(pieces):
+        left_s = max(deadline - time.perf_counter(), 0.0)
+        yield number, _solve_piece(piece, left_s / (len(pieces) - number))
+
+
+def _solve_piece(piece: _Piece, time_limit_s: float) -> MonthsAnswer:
+    """One month; where time ends before it has a schedule, what its relaxation leans to."""
+    started = time.perf_counter()
+    hull = build_hull(piece.window, start_value=piece.start_value, end_value=piece.end_value)
+    relaxed = hull.program.solve_relaxed()
+    state = relaxed.column_values[hull.on]
+    if np.array_equal(state, np.round(state)):
+        return MonthsAnswer(relaxed.bound, state > HALF_ON, in_time=True)
+    left_s = max(time_limit_s - (time.perf_counter() - started), 0.1)
+    answer = hull.program.solve(gap_frac=piece.gap_frac, time_limit_s=left_s)
+    on = (answer.column_values[hull.on] if answer.found else state) > HALF_ON
+    bound = max(answer.bound, relaxed.bound)
+    short = answer.objective - bound > piece.gap_frac * abs(answer.objective)
+    return MonthsAnswer(bound, on, in_time=answer.found and not short)
 
 
 def _without_seen_periods(piece: Window, seen: set[int]) -> Window:

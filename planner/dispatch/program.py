@@ -2,7 +2,7 @@
 
 The dispatch states hundreds of thousands of rows that differ only in their hour. Here a family of
 columns or rows is one call with arrays, so that a month is put together in milliseconds; the same
-problem written row by row for the reader is in `model_of_record`.
+problem written row by row for the reader is in `record`.
 """
 
 from dataclasses import dataclass
@@ -19,6 +19,13 @@ INFINITY = highspy.kHighsInf
 
 Term = tuple[FloatArray | float, IntArray]
 
+#: A linear programme has no schedule to give before it ends, so its limit only catches a hang.
+LINEAR_LIMIT_S = 900.0
+
+
+class InfeasibleError(SolveError):
+    """No values of the columns keep all rows."""
+
 
 @dataclass(frozen=True)
 class Answer:
@@ -26,20 +33,25 @@ class Answer:
 
     Parameters
     ----------
-    values : array, shape (columns,)
-        Best solution.
+    column_values : array, shape (columns,)
+        Best solution; empty where time ended before there was one.
     objective : float [currency]
-        Its cost, offset included.
+        Its cost, offset included; infinite where there is none.
     bound : float [currency]
         Proven lower bound on the cost.
     row_duals : array, shape (rows,)
         Marginal cost of each row's right-hand side; all zero where integers were decided.
     """
 
-    values: FloatArray
+    column_values: FloatArray
     objective: float
     bound: float
     row_duals: FloatArray
+
+    @property
+    def found(self) -> bool:
+        """Whether there is a solution."""
+        return self.column_values.size > 0
 
 
 class Program:
@@ -149,51 +161,66 @@ class Program:
         factors = np.broadcast_to(np.asarray(coefficient, dtype=np.float64), (len(rows),))
         self._entries.append((rows, columns, factors))
 
-    def solve(
-        self,
-        *,
-        gap_frac: float,
-        time_limit_s: float,
-        fixed: tuple[IntArray, FloatArray] | None = None,
-    ) -> Answer:
-        """Solve with HiGHS, and read its own bound.
+    def solve(self, *, gap_frac: float, time_limit_s: float) -> Answer:
+        """Solve with whole numbers, and read HiGHS's own bound.
 
         Parameters
         ----------
         gap_frac : float [-]
-            Relative gap at which a solution with whole numbers is good enough.
+            Relative gap at which a solution is good enough.
         time_limit_s : float [s]
             After this the best solution so far is taken, with its honest bound.
-        fixed : tuple of columns and values, optional
-            Columns that are fixed, and no longer whole: the rest is a linear programme.
 
         Returns
         -------
         Answer
-            Best solution and bound.
+            Best solution, if there was time for one, and bound.
 
         Raises
         ------
+        InfeasibleError
+            If there is no solution.
         SolveError
-            If HiGHS fails, or returns nothing that can be used.
+            If HiGHS fails.
         """
+        whole = np.concatenate(self._whole)
         solver = _quiet_solver(gap_frac, time_limit_s)
-        relaxed = fixed is not None
-        model = self._model(fixed)
-        if solver.passModel(model) == highspy.HighsStatus.kError:
-            raise SolveError("HiGHS refused the model")
-        if solver.run() == highspy.HighsStatus.kError:
-            raise SolveError("HiGHS failed while solving")
-        return self._answer(solver, linear=relaxed or not np.concatenate(self._whole).any())
+        _run(solver, self._model(whole=whole, fixed=None))
+        return _whole_answer(solver)
 
-    def _model(self, fixed: tuple[IntArray, FloatArray] | None) -> highspy.HighsLp:
+    def solve_relaxed(self, *, fixed: tuple[IntArray, FloatArray] | None = None) -> Answer:
+        """Solve as a linear programme: no column need be whole.
+
+        Parameters
+        ----------
+        fixed : tuple of columns and values, optional
+            Columns that are fixed.
+
+        Returns
+        -------
+        Answer
+            The optimum, with duals.
+
+        Raises
+        ------
+        InfeasibleError
+            If there is no solution.
+        SolveError
+            If HiGHS fails.
+        """
+        whole = np.zeros(self.columns, dtype=bool)
+        solver = _quiet_solver(0.0, LINEAR_LIMIT_S)
+        _run(solver, self._model(whole=whole, fixed=fixed))
+        return _linear_answer(solver)
+
+    def _model(
+        self, *, whole: BoolArray, fixed: tuple[IntArray, FloatArray] | None
+    ) -> highspy.HighsLp:
         """The programme in HiGHS's own form."""
         low, high = np.concatenate(self._low), np.concatenate(self._high)
-        whole = np.concatenate(self._whole)
         if fixed is not None:
             fixed_columns, values = fixed
             low[fixed_columns] = high[fixed_columns] = values
-            whole = np.zeros_like(whole)
         rows, columns, factors = (np.concatenate(part) for part in zip(*self._entries, strict=True))
         matrix = sparse.csc_matrix((factors, (rows, columns)), shape=(self.rows, self.columns))
         model = highspy.HighsLp()
@@ -215,25 +242,6 @@ class Program:
             model.integrality_ = [kinds[int(is_whole)] for is_whole in whole]
         return model
 
-    @staticmethod
-    def _answer(solver: highspy.Highs, *, linear: bool) -> Answer:
-        """Solution and bound, or an error that says what HiGHS said."""
-        status = solver.getModelStatus()
-        info = solver.getInfo()
-        usable = {highspy.HighsModelStatus.kOptimal, highspy.HighsModelStatus.kTimeLimit}
-        if status not in usable or not np.isfinite(info.objective_function_value):
-            raise SolveError(f"HiGHS ended with «{solver.modelStatusToString(status)}»")
-        if linear and status != highspy.HighsModelStatus.kOptimal:
-            raise SolveError("HiGHS reached its time limit in a linear programme")
-        solution = solver.getSolution()
-        objective = float(info.objective_function_value)
-        return Answer(
-            values=np.asarray(solution.col_value),
-            objective=objective,
-            bound=objective if linear else float(info.mip_dual_bound),
-            row_duals=np.asarray(solution.row_dual),
-        )
-
 
 def _quiet_solver(gap_frac: float, time_limit_s: float) -> highspy.Highs:
     """HiGHS with the settings under which the same input gives the same answer."""
@@ -247,3 +255,64 @@ def _quiet_solver(gap_frac: float, time_limit_s: float) -> highspy.Highs:
     ):
         solver.setOptionValue(name, value)
     return solver
+
+
+def _run(solver: highspy.Highs, model: highspy.HighsLp) -> None:
+    """Load and run, or say that HiGHS failed."""
+    if solver.passModel(model) == highspy.HighsStatus.kError:
+        raise SolveError("HiGHS refused the model")
+    if solver.run() == highspy.HighsStatus.kError:
+        # Where something else in this process used another number of threads, HiGHS does not start
+        # until its scheduler is made anew.
+        highspy.Highs.resetGlobalScheduler(True)
+        if solver.run() == highspy.HighsStatus.kError:
+            raise SolveError("HiGHS failed while solving")
+
+
+def _linear_answer(solver: highspy.Highs) -> Answer:
+    """The optimum of a linear programme; anything less is an error."""
+    _refuse_status(solver, {highspy.HighsModelStatus.kOptimal})
+    solution = solver.getSolution()
+    objective = float(solver.getInfo().objective_function_value)
+    return Answer(
+        column_values=np.asarray(solution.col_value),
+        objective=objective,
+        bound=objective,
+        row_duals=np.asarray(solution.row_dual),
+    )
+
+
+def _whole_answer(solver: highspy.Highs) -> Answer:
+    """Best solution and HiGHS's own bound, whatever it calls its end."""
+    _refuse_status(
+        solver,
+        {
+            highspy.HighsModelStatus.kOptimal,
+            highspy.HighsModelStatus.kTimeLimit,
+            highspy.HighsModelStatus.kSolutionLimit,
+        },
+    )
+    info = solver.getInfo()
+    feasible = info.primal_solution_status == highspy.kSolutionStatusFeasible
+    values = np.asarray(solver.getSolution().col_value) if feasible else np.zeros(0)
+    return Answer(
+        column_values=values,
+        objective=float(info.objective_function_value) if feasible else INFINITY,
+        bound=float(info.mip_dual_bound),
+        row_duals=np.zeros(0),
+    )
+
+
+def _refuse_status(solver: highspy.Highs, usable: set[highspy.HighsModelStatus]) -> None:
+    """Raise unless HiGHS ended in a way that can be used."""
+    status = solver.getModelStatus()
+    if status in usable:
+        return
+    said = solver.modelStatusToString(status)
+    impossible = {
+        highspy.HighsModelStatus.kInfeasible,
+        highspy.HighsModelStatus.kUnboundedOrInfeasible,
+    }
+    if status in impossible:
+        raise InfeasibleError(f"HiGHS ended with «{said}»")
+    raise SolveError(f"HiGHS ended with «{said}»")

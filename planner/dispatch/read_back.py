@@ -3,8 +3,9 @@
 import numpy as np
 import pandas as pd
 
-from planner.arrays import BoolArray, FloatArray
+from planner.arrays import FloatArray
 from planner.dispatch.commitment import starts_of
+from planner.dispatch.fixed_state import FixedYear
 from planner.dispatch.program import Answer
 from planner.dispatch.window import Window
 from planner.dispatch.year_program import GRADES, Columns, WindowProgram
@@ -14,27 +15,20 @@ SHARE_COLUMNS = {
     "hot gas": "share_hot_gas_frac",
     "steam, then water": "share_steam_then_water_frac",
     "water only": "share_water_only_frac",
+    "bypass": "share_bypass_frac",
 }
 
 #: Solver noise below this share of a column's largest value is taken for zero.
 NOISE_FRAC = 1e-9
 
 
-def hourly_flows(
-    year: Window, built: WindowProgram, answer: Answer, on: BoolArray, index: pd.Index
-) -> pd.DataFrame:
+def hourly_flows(solved: FixedYear, index: pd.Index) -> pd.DataFrame:
     """Every flow of a solved year.
 
     Parameters
     ----------
-    year : Window
-        All steps.
-    built : WindowProgram
-        The programme and its columns.
-    answer : Answer
-        Solved with the unit's state fixed.
-    on : array of bool, shape (steps,)
-        That state.
+    solved : FixedYear
+        The year, its programme and the solution.
     index : Index
         Of the site's year.
 
@@ -43,13 +37,13 @@ def hourly_flows(
     DataFrame, one row a step
         Columns of `Schedule.hourly`.
     """
-    columns, values = built.columns, answer.values
+    year, columns, values = solved.window, solved.built.columns, solved.answer.column_values
     flows = {
         "grid_import_kW": values[columns.grid_import],
         "grid_export_kW": values[columns.grid_export],
-        **_unit_flows(year, columns, values, on),
+        **_unit_flows(solved),
         **_supply_flows(year, columns, values),
-        **_prices(year, built, answer),
+        **_prices(year, solved.built, solved.answer),
     }
     return pd.DataFrame({name: _clean(flow) for name, flow in flows.items()}, index=index)
 
@@ -60,20 +54,23 @@ def _clean(flow: FloatArray) -> FloatArray:
     return np.where(np.abs(flow) <= NOISE_FRAC * largest, 0.0, flow)
 
 
-def _unit_flows(
-    year: Window, columns: Columns, values: FloatArray, on: BoolArray
-) -> dict[str, FloatArray]:
+def _unit_flows(solved: FixedYear) -> dict[str, FloatArray]:
     """State, power, fuel and heat of the unit."""
+    year, on = solved.window, solved.on
     zero = np.zeros(year.steps)
-    flows = {"unit_on": on.astype(np.float64), "unit_start": starts_of(on).astype(np.float64)}
+    flows: dict[str, FloatArray] = {
+        "unit_on": on.astype(np.float64),
+        "unit_start": starts_of(on).astype(np.float64),
+    }
     unit = year.unit
     if unit is None:
         names = ("unit_power_kW", "unit_fuel_lhv_kW", "start_fuel_lhv_kW")
         flows |= dict.fromkeys(names, zero)
-        shares = dict.fromkeys((*SHARE_COLUMNS.values(), "share_bypass_frac"), zero)
+        shares = dict.fromkeys(SHARE_COLUMNS.values(), zero)
         heats = {f"{kind}_{grade}_kW": zero for kind in ("unit", "dumped") for grade in GRADES}
         return flows | shares | heats
-    segments_kW = np.column_stack([values[segment] for segment in columns.segments])
+    columns, values = solved.built.columns, solved.answer.column_values
+    segments_kW = solved.built.segments_kW(values, unit.segment_power_kW.shape)
     above_kW = segments_kW.sum(axis=1)
     flows["unit_power_kW"] = unit.minimum_power_kW * on + above_kW
     fuel_lhv_kW = unit.fuel_at_minimum_lhv_kW * on + (unit.fuel_slope_lhv * segments_kW).sum(axis=1)
@@ -86,7 +83,7 @@ def _unit_flows(
 def _shares(
     year: Window, columns: Columns, values: FloatArray, fuel_lhv_kW: FloatArray
 ) -> dict[str, FloatArray]:
-    """Share of the exhaust on each path, by the fuel that made it; the rest is bypassed."""
+    """Share of the exhaust on each path, by the fuel that made it."""
     unit = year.unit
     shares = {name: np.zeros(year.steps) for name in SHARE_COLUMNS.values()}
     if unit is None:
@@ -97,8 +94,6 @@ def _shares(
         fuel = unit.fuel_at_minimum_lhv_kW * values[part_on]
         fuel = fuel + (unit.fuel_slope_lhv * parts).sum(axis=1)
         shares[SHARE_COLUMNS[name]] = np.where(fuel_lhv_kW > 0.0, fuel / burning, 0.0)
-    taken = sum(shares.values(), np.zeros(year.steps))
-    shares["share_bypass_frac"] = np.where(fuel_lhv_kW > 0.0, np.maximum(1.0 - taken, 0.0), 0.0)
     return shares
 
 
@@ -140,14 +135,21 @@ def _supply_flows(year: Window, columns: Columns, values: FloatArray) -> dict[st
         )
         flows[cooling] = flows[cooling] + values[numbers]
         flows[drive] = flows[drive] + values[numbers] / chiller.cop
-    stored = {
-        "store_charge_kW": columns.charge,
-        "store_discharge_kW": columns.discharge,
-        "store_level_kWh": columns.level,
+    return flows | _store_flows(year, columns, values)
+
+
+def _store_flows(year: Window, columns: Columns, values: FloatArray) -> dict[str, FloatArray]:
+    """The store's net flow, one way at a time, and its level."""
+    if columns.charge is None or columns.discharge is None or columns.level is None:
+        names = ("store_charge_kW", "store_discharge_kW", "store_level_kWh")
+        return dict.fromkeys(names, np.zeros(year.steps))
+    # In and out at once changes nothing but looks foolish.
+    net_kW = values[columns.charge] - values[columns.discharge]
+    return {
+        "store_charge_kW": np.maximum(net_kW, 0.0),
+        "store_discharge_kW": np.maximum(-net_kW, 0.0),
+        "store_level_kWh": values[columns.level],
     }
-    for name, place in stored.items():
-        flows[name] = np.zeros(year.steps) if place is None else values[place]
-    return flows
 
 
 def _prices(year: Window, built: WindowProgram, answer: Answer) -> dict[str, FloatArray]:

@@ -1,4 +1,9 @@
-"""Demands that nothing on the site could meet, told before any solver is asked."""
+"""Demands that nothing on the site could meet, told by their hour and by how much.
+
+Capacities are compared with demands before any solver is asked. What only shows when all balances
+are taken together (an empty store, heat that is made only with power that nobody takes) is found
+after a solve that failed, by the least supply that would have to be added from outside.
+"""
 
 from collections.abc import Iterator
 
@@ -7,13 +12,17 @@ import pandas as pd
 
 from load_profiles import Fault
 from planner.arrays import FloatArray
-from planner.dispatch.window import power_without_chillers_kW
+from planner.dispatch.window import Window, power_without_chillers_kW
+from planner.dispatch.year_program import build
 from planner.errors import UnmetDemandError
 from planner.market.prices import Prices
 from planner.plant.envelope import OperatingEnvelope
 
 #: Less than this share of a demand is rounding, not a shortfall.
 TOLERANCE_FRAC = 1e-9
+
+#: And less than this share of the largest demand where a solver found it.
+LOCATED_FRAC = 1e-6
 
 
 def refuse_unmet_demand(envelope: OperatingEnvelope, prices: Prices, hourly: pd.DataFrame) -> None:
@@ -36,6 +45,39 @@ def refuse_unmet_demand(envelope: OperatingEnvelope, prices: Prices, hourly: pd.
     faults = tuple(_shortfalls(envelope, prices, hourly))
     if faults:
         raise UnmetDemandError(faults)
+
+
+def locate_shortfall(year: Window, index: pd.Index) -> None:
+    """Raise where the least supply from outside is needed, if any is.
+
+    Parameters
+    ----------
+    year : Window
+        All steps, known to have no solution.
+    index : Index
+        Of the site's year.
+
+    Raises
+    ------
+    UnmetDemandError
+        For each carrier that falls short: the worst hour, how much, in how many hours.
+    """
+    built = build(year, outside_supply=True)
+    answer = built.program.solve_relaxed()
+    faults = []
+    for carrier, columns in built.columns.outside.items():
+        short_kW = answer.column_values[columns]
+        least_kW = LOCATED_FRAC * max(float(year.demand_kW[carrier].max()), 1.0)
+        if short_kW.max() > least_kW:
+            worst = int(short_kW.argmax())
+            came = f"{year.demand_kW[carrier][worst]:,.0f} kW at {index[worst]:%Y-%m-%d %H:%M} UTC"
+            must = (
+                f"{short_kW[worst]:,.0f} kW short with all balances taken together, and short in "
+                f"{int((short_kW > least_kW).sum())} steps; raise a capacity or mend the demand"
+            )
+            faults.append(Fault(f"{carrier} demand", came, must))
+    if faults:
+        raise UnmetDemandError(tuple(faults))
 
 
 def _shortfalls(

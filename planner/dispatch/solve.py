@@ -6,21 +6,24 @@ programme whose solution is the schedule. The gap is between those two.
 """
 
 import time
-from collections.abc import Iterable
+from collections.abc import Callable
+from dataclasses import dataclass
 
 import numpy as np
 import pandas as pd
 
 from planner.arrays import BoolArray, FloatArray
-from planner.dispatch.commitment import mended, starts_of
+from planner.dispatch.commitment import mended
+from planner.dispatch.fixed_state import FixedYear, solve_fixed
 from planner.dispatch.months import borders, solve_months
-from planner.dispatch.program import Answer
+from planner.dispatch.program import InfeasibleError
 from planner.dispatch.read_back import hourly_flows
 from planner.dispatch.record import certify
 from planner.dispatch.schedule import Schedule
-from planner.dispatch.shortfall import refuse_unmet_demand
+from planner.dispatch.shortfall import locate_shortfall, refuse_unmet_demand
 from planner.dispatch.window import Window, whole_year
-from planner.dispatch.year_program import WindowProgram, build
+from planner.dispatch.year_program import build
+from planner.errors import SolveError
 from planner.market.prices import Prices
 from planner.plant.envelope import OperatingEnvelope
 
@@ -28,7 +31,28 @@ from planner.plant.envelope import OperatingEnvelope
 MOST_ROUNDS = 3
 
 #: Share of the asked gap that a single month may leave.
-MONTH_SHARE = 0.5
+MONTH_SHARE = 0.6
+
+#: Share of the time left that one round may take, so that a better one can follow.
+ROUND_SHARE = 0.6
+
+#: A bound may lie above a cost by this share: the solver's own tolerance.
+ROUNDING_FRAC = 1e-6
+
+Told = Callable[[str, float], None]
+
+
+def _silent(_what: str, _done_frac: float) -> None:
+    """Tell nobody."""
+
+
+@dataclass(frozen=True)
+class _Found:
+    """The best year so far, and its proof."""
+
+    year: FixedYear
+    bound: float
+    path: str
 
 
 def solve_year(
@@ -36,9 +60,11 @@ def solve_year(
     prices: Prices,
     hourly: pd.DataFrame,
     *,
-    gap_frac: float = 5e-4,
     time_limit_s: float = 120.0,
-    certified: bool = True,
+    gap_frac: float = 5e-4,
+    duals: bool = True,
+    processes: int = 1,
+    progress: Told | None = None,
 ) -> Schedule:
     """Find the cheapest way to run a plant through the year.
 
@@ -50,12 +76,17 @@ def solve_year(
         What the dispatch pays and earns.
     hourly : DataFrame, one row a step
         Demands, columns as `SiteYear.hourly`.
-    gap_frac : float [-]
-        Proven gap that is good enough.
     time_limit_s : float [s]
         After about this long the best schedule so far is taken, with its honest gap.
-    certified : bool
-        Have the model of record, written row by row, find the same cost with the same state.
+    gap_frac : float [-]
+        Proven gap that is good enough.
+    duals : bool
+        Have the model of record, written row by row, certify cost and marginal prices. Without
+        it the same numbers stand in the schedule, from one statement of the problem only.
+    processes : int
+        Months solved at once; the answer is the same unless the time limit cuts in.
+    progress : callable, optional
+        Told what is being done and the share that is finished.
 
     Returns
     -------
@@ -70,83 +101,110 @@ def solve_year(
         If no solver gives a usable answer.
     """
     started = time.perf_counter()
+    told = progress or _silent
     refuse_unmet_demand(envelope, prices, hourly)
     year = whole_year(envelope, prices, hourly)
-    built = build(year)
-    if year.unit is None:
-        answer = built.program.solve(gap_frac=0.0, time_limit_s=time_limit_s)
-        on, bound, path = np.zeros(year.steps, dtype=bool), answer.bound, "one linear programme"
-    else:
-        deadline = started + time_limit_s
-        answer, on, bound, path = _with_unit(year, built, gap_frac=gap_frac, deadline=deadline)
-    if certified:
-        certify(year, on, answer.objective)
+    search = _Search(
+        year,
+        gap_frac=gap_frac,
+        deadline=started + time_limit_s,
+        processes=processes,
+        told=told,
+    )
+    try:
+        found = search.separate() if year.unit is None else search.with_unit()
+    except InfeasibleError:
+        locate_shortfall(year, hourly.index)
+        raise
+    if found.bound > found.year.cost + ROUNDING_FRAC * abs(found.year.cost):
+        raise SolveError(
+            f"{envelope.name}: the bound {found.bound:.2f} lies above the cost "
+            f"{found.year.cost:.2f}"
+        )
+    if duals:
+        told("certifying the year by the model of record", 0.85)
+        certify(found.year)
+    told("dispatched", 1.0)
     return Schedule(
         name=envelope.name,
-        hourly=hourly_flows(year, built, answer, on, hourly.index),
-        cost_per_year=answer.objective,
-        lower_bound_per_year=min(bound, answer.objective),
-        path=path,
+        hourly=hourly_flows(found.year, hourly.index),
+        cost_per_year=found.year.cost,
+        lower_bound_per_year=min(found.bound, found.year.cost),
+        path=found.path,
         seconds=time.perf_counter() - started,
     )
 
 
-def _with_unit(
-    year: Window, built: WindowProgram, *, gap_frac: float, deadline: float
-) -> tuple[Answer, BoolArray, float, str]:
-    """Bound and schedule of a year with a unit, improved until the gap is good enough."""
-    cuts = borders(year)
-    values = np.full(len(cuts), _plain_heat_value(year))
-    best: tuple[Answer, BoolArray] | None = None
-    bound = -np.inf
-    for number in range(1, MOST_ROUNDS + 1):
-        months = solve_months(
-            year,
-            values,
-            gap_frac=MONTH_SHARE * gap_frac,
-            time_limit_s=max(deadline - time.perf_counter(), 5.0),
+class _Search:
+    """One year being solved."""
+
+    def __init__(
+        self, year: Window, *, gap_frac: float, deadline: float, processes: int, told: Told
+    ) -> None:
+        self._year = year
+        self._gap_frac = gap_frac
+        self._deadline = deadline
+        self._processes = processes
+        self._told = told
+
+    def separate(self) -> _Found:
+        """A year without a unit."""
+        year = solve_fixed(self._year, np.zeros(self._year.steps, dtype=bool))
+        return _Found(year, year.cost, "one linear programme, for nothing is switched on or off")
+
+    def with_unit(self) -> _Found:
+        """Bound and schedule of a year with a unit, improved until the gap is good enough."""
+        best: FixedYear | None = None
+        bound, rounds = -np.inf, 0
+        values = self._first_level_values()
+        while True:
+            rounds += 1
+            months = solve_months(
+                self._year,
+                values,
+                gap_frac=MONTH_SHARE * self._gap_frac,
+                time_limit_s=ROUND_SHARE * max(self._deadline - time.perf_counter(), 5.0),
+                processes=self._processes,
+                progress=lambda done: self._told("months of the year", 0.1 + 0.5 * done),
+            )
+            bound = max(bound, months.bound)
+            self._told("the year with its months' states", 0.6)
+            tried = self._tried(months.on)
+            best = tried if best is None or tried.cost < best.cost else best
+            if self._good_enough(best.cost, bound) or rounds == MOST_ROUNDS:
+                break
+            values = best.level_values(borders(self._year))
+        ended = "to the asked gap" if months.in_time else "until their time was over"
+        path = (
+            f"{len(borders(self._year)) - 1} months apart for bound and state, solved {ended}, "
+            f"then the year as a linear programme with that state; {rounds} round(s)"
         )
-        bound = max(bound, months.bound)
-        on = mended(months.on, year)
-        answer = _with_state(built, on)
-        if best is None or answer.objective < best[0].objective:
-            best = answer, on
-        gap = (best[0].objective - bound) / abs(best[0].objective)
-        late = time.perf_counter() > deadline
-        if gap <= gap_frac or year.store is None or late:
-            break
-        values = _level_values(built, best[0], year)
-    path = f"{len(cuts) - 1} months apart, then the year with their states; {number} rounds"
-    return (*best, bound, path) if best else _nothing()
+        return _Found(best, bound, path)
 
+    def _good_enough(self, cost: float, bound: float) -> bool:
+        """Whether another round would be idle, or too late."""
+        met = cost - bound <= self._gap_frac * abs(cost)
+        late = time.perf_counter() > self._deadline
+        return met or late or self._year.store is None
 
-def _nothing() -> tuple[Answer, BoolArray, float, str]:
-    """Unreachable by construction: a first round always leaves an answer or raises."""
-    raise RuntimeError("the first round left no schedule")
+    def _first_level_values(self) -> FloatArray:
+        """Prices of stored heat at the months' borders, from the relaxed year."""
+        cuts = borders(self._year)
+        if self._year.store is None:
+            return np.zeros(len(cuts))
+        self._told("the year without on/off decisions", 0.02)
+        built = build(self._year)
+        answer = built.program.solve_relaxed()
+        return built.level_values(answer, cuts)
 
-
-def _with_state(built: WindowProgram, on: BoolArray) -> Answer:
-    """The year as a linear programme, the unit's state fixed."""
-    if built.columns.on is None or built.columns.start is None:
-        raise RuntimeError("a year with a unit has columns for its state")
-    columns = np.concatenate([built.columns.on, built.columns.start])
-    state = np.concatenate([on, starts_of(on)]).astype(np.float64)
-    return built.program.solve(gap_frac=0.0, time_limit_s=600.0, fixed=(columns, state))
-
-
-def _plain_heat_value(year: Window) -> float:
-    """What the cheapest boiler's hot water costs, as a first guess of what stored heat is worth."""
-    slopes: Iterable[float] = (
-        heater.fuel_per_heat_lhv for heater in year.heaters if heater.carrier == "hot_water"
-    )
-    return min(slopes, default=0.0) * float(year.fuel_per_lhv_kWh.mean()) * 0.5
-
-
-def _level_values(built: WindowProgram, answer: Answer, year: Window) -> FloatArray:
-    """Value of stored heat at each border, from the last schedule's level balance."""
-    rows = built.rows.level
-    if rows is None:
-        return np.zeros(len(borders(year)))
-    # A further kWh at a step's end relaxes the balance of the step after it.
-    duals = answer.row_duals[rows]
-    return np.asarray(duals[np.append(borders(year)[:-1], 0)], dtype=np.float64)
+    def _tried(self, on: BoolArray) -> FixedYear:
+        """The year with a state, or where that cannot serve the site, with the unit always on."""
+        unit = self._year.unit
+        always = on if unit is None else unit.available
+        states = [on, always, np.zeros_like(on)]
+        for state in states[:-1]:
+            try:
+                return solve_fixed(self._year, mended(state, self._year))
+            except InfeasibleError:
+                continue
+        return solve_fixed(self._year, states[-1])

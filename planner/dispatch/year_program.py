@@ -8,12 +8,19 @@ from dataclasses import dataclass, field
 import numpy as np
 
 from planner.arrays import FloatArray, IntArray
-from planner.dispatch.program import Program
-from planner.dispatch.window import Window
+from planner.dispatch.program import Answer, Program, Term
+from planner.dispatch.segment_order import SegmentOrder
+from planner.dispatch.window import CARRIERS, Window
 from planner.plant.envelope import ExhaustPath
 
 #: Grades of heat that the balances are written for.
 GRADES = ("steam", "hot_water", "hot_gas")
+
+#: Price of supply from outside [currency/kWh]: dearer than anything that is for sale.
+OUTSIDE_PRICE = 1e3
+
+#: The path that yields nothing wanted; always there.
+BYPASS = ExhaustPath("bypass", {}, {})
 
 
 @dataclass
@@ -24,7 +31,6 @@ class Columns:
     grid_export: IntArray
     on: IntArray | None = None
     start: IntArray | None = None
-    segments: list[IntArray] = field(default_factory=list)
     path_on: dict[str, IntArray] = field(default_factory=dict)
     path_segments: dict[str, list[IntArray]] = field(default_factory=dict)
     used: dict[str, IntArray] = field(default_factory=dict)
@@ -33,8 +39,12 @@ class Columns:
     charge: IntArray | None = None
     discharge: IntArray | None = None
     level: IntArray | None = None
-    start_level: IntArray | None = None
     peaks: list[tuple[int, IntArray]] = field(default_factory=list)
+    outside: dict[str, IntArray] = field(default_factory=dict)
+
+    def from_outside(self, carrier: str) -> list[Term]:
+        """Supply from outside, where it is allowed."""
+        return [(1.0, self.outside[carrier])] if carrier in self.outside else []
 
 
 @dataclass
@@ -49,15 +59,71 @@ class Rows:
 
 @dataclass(frozen=True)
 class WindowProgram:
-    """A programme with the places of its quantities."""
+    """A programme with the places of its quantities.
+
+    Parameters
+    ----------
+    program : Program
+        Ready to solve.
+    columns : Columns
+        Where each quantity stands.
+    rows : Rows
+        Where each balance stands.
+    kept : float [-]
+        Share of the store's level that a step keeps.
+    """
 
     program: Program
     columns: Columns
     rows: Rows
+    kept: float
+
+    def level_values(self, answer: Answer, cuts: IntArray) -> FloatArray:
+        """Value of stored heat at borders of the window.
+
+        Parameters
+        ----------
+        answer : Answer
+            With duals.
+        cuts : array of int
+            Steps that begin a piece, the window's end included.
+
+        Returns
+        -------
+        array, shape (borders,) [currency/kWh]
+            The end has the value of the beginning; all zero without a store.
+        """
+        if self.rows.level is None:
+            return np.zeros(len(cuts))
+        # A further kWh at a step's end is a right-hand side of `kept` in the step after it, and
+        # what that takes off the cost is its value.
+        duals = answer.row_duals[self.rows.level]
+        return np.asarray(-self.kept * duals[np.append(cuts[:-1], 0)], dtype=np.float64)
+
+    def segments_kW(self, values: FloatArray, shape: tuple[int, ...]) -> FloatArray:
+        """Power in each segment, all paths together.
+
+        Parameters
+        ----------
+        values : array, shape (columns,)
+            Of a solution.
+        shape : tuple of int
+            Steps and segments.
+
+        Returns
+        -------
+        array, shape (steps, segments) [kW]
+            Above the minimum power.
+        """
+        filled_kW = np.zeros(shape)
+        for copy in self.columns.path_segments.values():
+            for k, part in enumerate(copy):
+                filled_kW[:, k] += values[part]
+        return filled_kW
 
 
 def build(
-    window: Window, *, start_value: float | None = None, end_value: float | None = None
+    window: Window, order: SegmentOrder | None = None, *, outside_supply: bool = False
 ) -> WindowProgram:
     """State the dispatch of a window.
 
@@ -65,10 +131,10 @@ def build(
     ----------
     window : Window
         Demands, prices and machines of some consecutive steps.
-    start_value, end_value : float, optional [currency/kWh]
-        Value of heat in the store at the window's borders. Given, the levels at both borders are
-        free and priced: the programme then bounds this window's part of a longer year from below.
-        Left out, the store ends at the level at which it began.
+    order : SegmentOrder, optional
+        Segments that must be full, or empty.
+    outside_supply : bool
+        Let every demand be met from outside too, at a price that only a shortfall pays.
 
     Returns
     -------
@@ -80,15 +146,23 @@ def build(
     _unit_columns(program, window, columns)
     _path_columns(program, window, columns)
     _supply_columns(program, window, columns)
+    if outside_supply:
+        columns.outside = {
+            carrier: program.add_columns(window.steps, cost=OUTSIDE_PRICE * window.step_h)
+            for carrier in CARRIERS
+        }
     _unit_rows(program, window, columns)
     _path_rows(program, window, columns)
-    level_rows = _store_rows(program, window, columns, start_value, end_value)
+    if order is not None:
+        _order_rows(program, window, columns, order)
+    level_rows = _store_rows(program, window, columns)
     heat = _heat_rows(program, window, columns)
     _cooling_rows(program, window, columns)
     power = _power_rows(program, window, columns)
     peaks = _peak_rows(program, window, columns)
     program.offset = window.fixed_cost
-    return WindowProgram(program, columns, Rows(power, heat, level_rows, peaks))
+    loss_frac = 0.0 if window.store is None else window.store.loss_frac_per_h * window.step_h
+    return WindowProgram(program, columns, Rows(power, heat, level_rows, peaks), 1.0 - loss_frac)
 
 
 def _grid_columns(program: Program, window: Window) -> Columns:
@@ -105,7 +179,7 @@ def _grid_columns(program: Program, window: Window) -> Columns:
 
 
 def _unit_columns(program: Program, window: Window, columns: Columns) -> None:
-    """State, starts and power above the minimum, with their fuel and wear."""
+    """State and starts, with the fuel and wear of running at minimum power."""
     unit = window.unit
     if unit is None:
         return
@@ -121,17 +195,24 @@ def _unit_columns(program: Program, window: Window, columns: Columns) -> None:
     columns.start = program.add_columns(
         window.steps, high=1.0, cost=unit.cost_per_start + unit.start_fuel_lhv_kWh * fuel
     )
-    for k in range(unit.segment_power_kW.shape[1]):
-        further = unit.fuel_slope_lhv[:, k] * fuel + unit.cost_per_kWh
-        columns.segments.append(program.add_columns(window.steps, cost=further * step_h))
 
 
 def _path_columns(program: Program, window: Window, columns: Columns) -> None:
-    """The part of the unit's state and power whose exhaust takes each path."""
-    for path in window.paths:
-        columns.path_on[path.name] = program.add_columns(window.steps, high=1.0)
+    """A copy of the unit's state and segments for each path: the part whose exhaust takes it."""
+    unit = window.unit
+    if unit is None or columns.on is None:
+        return
+    further = [
+        (unit.fuel_slope_lhv[:, k] * window.fuel_per_lhv_kWh + unit.cost_per_kWh) * window.step_h
+        for k in range(unit.segment_power_kW.shape[1])
+    ]
+    for path in (*window.paths, BYPASS):
+        alone = not window.paths
+        columns.path_on[path.name] = (
+            columns.on if alone else program.add_columns(window.steps, high=1.0)
+        )
         columns.path_segments[path.name] = [
-            program.add_columns(window.steps) for _ in columns.segments
+            program.add_columns(window.steps, cost=cost) for cost in further
         ]
     for grade in window.recovered_grades:
         columns.used[grade] = program.add_columns(window.steps)
@@ -154,63 +235,62 @@ def _supply_columns(program: Program, window: Window, columns: Columns) -> None:
 
 
 def _unit_rows(program: Program, window: Window, columns: Columns) -> None:
-    """Power above the minimum only while on; starts; minimum times up and down."""
+    """Starts, and minimum times up and down."""
     unit, on, start = window.unit, columns.on, columns.start
     if unit is None or on is None or start is None:
         return
-    for k, segment in enumerate(columns.segments):
-        width_kW = unit.segment_power_kW[:, k]
-        program.add_rows([(1.0, segment), (-width_kW, on)], high=0.0)
     # The state before the window is free, so its first step never counts as a start.
     program.add_rows([(1.0, start[1:]), (-1.0, on[1:]), (1.0, on[:-1])], low=0.0)
     program.add_rows([(1.0, start[:1])], high=0.0)
-    _recent_starts(program, start, on, round(unit.minimum_up_h / window.step_h), up=True)
-    _recent_starts(program, start, on, round(unit.minimum_down_h / window.step_h), up=False)
+    recent_starts(program, start, on, round(unit.minimum_up_h / window.step_h), up=True)
+    recent_starts(program, start, on, round(unit.minimum_down_h / window.step_h), up=False)
 
 
-def _recent_starts(
-    program: Program, start: IntArray, on: IntArray, reach: int, *, up: bool
-) -> None:
-    """At most one start within the minimum time, and only into (out of) the state it protects."""
+def recent_starts(program: Program, start: IntArray, on: IntArray, reach: int, *, up: bool) -> None:
+    """At most one start within the minimum time, and only into (out of) the state it protects.
+
+    Parameters
+    ----------
+    program : Program
+        Gets the rows.
+    start, on : array of int, shape (steps,)
+        Columns of starts and state.
+    reach : int
+        Minimum time in steps.
+    up : bool
+        Minimum time up, or down.
+    """
     steps = len(on)
-    if reach < 1 or steps <= reach:
+    if reach < 1 or (reach == 1 and not up):
         return
-    if up:
-        first, rows = 0, program.add_rows([(-1.0, on)], high=0.0)
-    else:
-        first, rows = reach, program.add_rows([(1.0, on[:-reach])], high=1.0)
-    for back in range(reach):
-        later = np.arange(max(first, back), steps)
-        program.add_to_rows(rows[later - first], 1.0, start[later - back])
+    rows = program.add_rows([(-1.0 if up else 1.0, on)], high=0.0 if up else 1.0)
+    for distance in range(reach) if up else range(1, reach + 1):
+        # Up: no start so shortly before a step that is off. Down: none so shortly after one on.
+        near, far = np.arange(steps - distance), np.arange(distance, steps)
+        held, starts = (far, near) if up else (near, far)
+        program.add_to_rows(rows[held], 1.0, start[starts])
 
 
 def _path_rows(program: Program, window: Window, columns: Columns) -> None:
-    """Paths share the exhaust: each takes a part of the state, and of the power no more than that."""
+    """The copies add up to the unit, each within its part; heat used is no more than yielded."""
     unit, on = window.unit, columns.on
-    if unit is None or on is None or not window.paths:
+    if unit is None or on is None:
         return
-    path_on = [columns.path_on[path.name] for path in window.paths]
-    program.add_rows([(1.0, on), *((-1.0, part) for part in path_on)], low=0.0)
-    for k, segment in enumerate(columns.segments):
-        width_kW = unit.segment_power_kW[:, k]
-        parts = [columns.path_segments[path.name][k] for path in window.paths]
-        for share, part in zip(path_on, parts, strict=True):
-            program.add_rows([(1.0, part), (-width_kW, share)], high=0.0)
-        left = [(1.0, segment), *((-1.0, part) for part in parts)]
-        program.add_rows(left, low=0.0)
-        # What is bypassed obeys the same limit.
-        shares = [(width_kW, share) for share in path_on]
-        program.add_rows([*left, (-width_kW, on), *shares], high=0.0)
+    if window.paths:
+        copies = [(-1.0, part) for part in columns.path_on.values()]
+        program.add_rows([(1.0, on), *copies], low=0.0, high=0.0)
+    for name, segments in columns.path_segments.items():
+        for k, segment in enumerate(segments):
+            width_kW = unit.segment_power_kW[:, k]
+            program.add_rows([(1.0, segment), (-width_kW, columns.path_on[name])], high=0.0)
     for grade, used in columns.used.items():
-        terms = [(-1.0, used)]
+        terms: list[Term] = [(-1.0, used)]
         for path in window.paths:
             terms += _yield_terms(path, grade, columns)
         program.add_rows(terms, low=0.0)
 
 
-def _yield_terms(
-    path: ExhaustPath, grade: str, columns: Columns
-) -> list[tuple[FloatArray | float, IntArray]]:
+def _yield_terms(path: ExhaustPath, grade: str, columns: Columns) -> list[Term]:
     """Heat of one grade that a path yields."""
     if grade not in path.yield_at_minimum_kW:
         return []
@@ -221,26 +301,27 @@ def _yield_terms(
     ]
 
 
-def _store_rows(
-    program: Program,
-    window: Window,
-    columns: Columns,
-    start_value: float | None,
-    end_value: float | None,
-) -> IntArray | None:
-    """The level follows charge, discharge and loss; its ends meet, or are free and priced."""
+def _order_rows(program: Program, window: Window, columns: Columns, order: SegmentOrder) -> None:
+    """Segments that must be full are, and those that must be empty are."""
+    if window.unit is None or columns.on is None:
+        return
+    for k in range(window.unit.segment_power_kW.shape[1]):
+        copies = [(1.0, copy[k]) for copy in columns.path_segments.values()]
+        full, empty = np.flatnonzero(order.full[:, k]), np.flatnonzero(order.empty[:, k])
+        width_kW = window.unit.segment_power_kW[full, k]
+        whole = [(1.0, part[full]) for _, part in copies]
+        program.add_rows([*whole, (-width_kW, columns.on[full])], low=0.0)
+        program.add_rows([(1.0, part[empty]) for _, part in copies], high=0.0)
+
+
+def _store_rows(program: Program, window: Window, columns: Columns) -> IntArray | None:
+    """The level follows charge, discharge and loss, and ends where it began."""
     store, level = window.store, columns.level
     if store is None or level is None or columns.charge is None or columns.discharge is None:
         return None
     step_h = window.step_h
     kept = 1.0 - store.loss_frac_per_h * step_h
-    if start_value is None or end_value is None:
-        first = level[-1:]
-    else:
-        first = program.add_columns(1, high=store.capacity_kWh, cost=start_value)
-        program.add_to_cost(level[-1], -end_value)
-    columns.start_level = first
-    before = np.concatenate([first, level[:-1]])
+    before = np.roll(level, 1)
     return program.add_rows(
         [(1.0, level), (-kept, before), (-step_h, columns.charge), (step_h, columns.discharge)],
         low=0.0,
@@ -252,7 +333,9 @@ def _heat_rows(program: Program, window: Window, columns: Columns) -> dict[str, 
     """Heat used from the exhaust, heaters and store meet each grade's demand."""
     rows = {}
     for grade in GRADES:
-        terms = [(1.0, numbers) for carrier, numbers in columns.heaters if carrier == grade]
+        terms: list[Term] = [
+            (1.0, numbers) for carrier, numbers in columns.heaters if carrier == grade
+        ]
         if grade in columns.used:
             terms.append((1.0, columns.used[grade]))
         if grade == "hot_water" and columns.charge is not None and columns.discharge is not None:
@@ -261,6 +344,7 @@ def _heat_rows(program: Program, window: Window, columns: Columns) -> dict[str, 
             if chiller.drive == grade:
                 terms.append((-1.0 / chiller.cop, numbers))
         if terms:
+            terms += columns.from_outside(grade)
             demand_kW = window.demand_kW[grade]
             rows[grade] = program.add_rows(terms, low=demand_kW, high=demand_kW)
     return rows
@@ -270,19 +354,21 @@ def _cooling_rows(program: Program, window: Window, columns: Columns) -> None:
     """Chillers meet the cooling."""
     if columns.chillers:
         demand_kW = window.demand_kW["cooling"]
-        terms = [(1.0, numbers) for numbers in columns.chillers]
+        terms: list[Term] = [(1.0, numbers) for numbers in columns.chillers]
+        terms += columns.from_outside("cooling")
         program.add_rows(terms, low=demand_kW, high=demand_kW)
 
 
 def _power_rows(program: Program, window: Window, columns: Columns) -> IntArray:
     """Unit and import meet the site's power, its chillers' power and export."""
-    terms = [(1.0, columns.grid_import), (-1.0, columns.grid_export)]
+    terms: list[Term] = [(1.0, columns.grid_import), (-1.0, columns.grid_export)]
     if window.unit is not None and columns.on is not None:
         terms.append((window.unit.minimum_power_kW, columns.on))
-        terms += [(1.0, segment) for segment in columns.segments]
+        terms += [(1.0, part) for copy in columns.path_segments.values() for part in copy]
     for chiller, numbers in zip(window.chillers, columns.chillers, strict=True):
         if chiller.drive == "power":
             terms.append((-1.0 / chiller.cop, numbers))
+    terms += columns.from_outside("power")
     demand_kW = window.demand_kW["power"]
     return program.add_rows(terms, low=demand_kW, high=demand_kW)
 
@@ -290,7 +376,7 @@ def _power_rows(program: Program, window: Window, columns: Columns) -> IntArray:
 def _peak_rows(
     program: Program, window: Window, columns: Columns
 ) -> list[tuple[IntArray, IntArray]]:
-    """Each demand charge's peak is no lower than any import that it counts; rows and their steps."""
+    """Each charge's peak is no lower than any import that it counts; rows and their steps."""
     found = []
     for number, charge in enumerate(window.prices.demand_charges):
         counted, period = window.cut(charge.counted), window.cut(charge.period)
