@@ -14,6 +14,8 @@ import pandas as pd
 
 from planner.arrays import BoolArray, FloatArray
 from planner.dispatch.commitment import mended
+from planner.dispatch.fast_shape import why_unknown
+from planner.dispatch.fast_year import solve_window
 from planner.dispatch.fixed_state import FixedYear, solve_fixed
 from planner.dispatch.months import borders, solve_months
 from planner.dispatch.program import InfeasibleError
@@ -38,6 +40,12 @@ ROUND_SHARE = 0.6
 
 #: A bound may lie above a cost by this share: the solver's own tolerance.
 ROUNDING_FRAC = 1e-6
+
+#: What the faster way did, in the words of the report.
+QUICK_PATH = (
+    "a dynamic programme over unit states and prices of stored heat for bound and state, then the "
+    "year as a linear programme with that state"
+)
 
 Told = Callable[[str, float], None]
 
@@ -153,7 +161,17 @@ class _Search:
         return _Found(year, year.cost, "one linear programme, for nothing is switched on or off")
 
     def with_unit(self) -> _Found:
-        """Bound and schedule of a year with a unit, improved until the gap is good enough."""
+        """Bound and schedule of a year with a unit, by the way that suits its shape."""
+        unknown = why_unknown(self._year)
+        if unknown is not None:
+            return self._by_months(unknown)
+        self._told("the year by prices of stored heat", 0.1)
+        quick = solve_window(self._year, self._gap_frac)
+        year = self._tried(quick["on"])
+        return _Found(year, quick["lb"], QUICK_PATH)
+
+    def _by_months(self, unknown: str) -> _Found:
+        """Bound and schedule from months solved apart, improved until the gap is good enough."""
         best: FixedYear | None = None
         bound, rounds = -np.inf, 0
         values = self._first_level_values()
@@ -177,7 +195,8 @@ class _Search:
         ended = "to the asked gap" if months.in_time else "until their time was over"
         path = (
             f"{len(borders(self._year)) - 1} months apart for bound and state, solved {ended}, "
-            f"then the year as a linear programme with that state; {rounds} round(s)"
+            f"then the year as a linear programme with that state; {rounds} round(s); "
+            f"the faster way does not know {unknown}"
         )
         return _Found(best, bound, path)
 

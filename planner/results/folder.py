@@ -4,7 +4,6 @@ It holds `results.json`, one `hourly_<key>.csv` an option and `hourly_separate.c
 `variants.csv` and the study file. Everything is written under a temporary name and renamed.
 """
 
-import os
 import shutil
 import tempfile
 from pathlib import Path
@@ -74,9 +73,13 @@ def check_target(target: Path) -> None:
     if target.is_dir() and any(target.iterdir()) and not (target / MARK).is_file():
         raise ResultsError(f"{target} = a folder of other things: name an empty or a new one")
     parent = next(place for place in target.absolute().parents if place.exists())
-    for place in (parent, target):
-        if place.exists() and not os.access(place, os.W_OK):
-            raise ResultsError(f"{place} = not writable: name a folder that you may write")
+    try:
+        # Rights alone do not tell: a mount may be read-only, and root passes every other check.
+        with tempfile.TemporaryDirectory(prefix=f".{target.name}-", dir=parent):
+            pass
+    except OSError as error:
+        came = error.strerror or "an error of the file system"
+        raise ResultsError(f"{parent} = {came}: name a folder that you may write") from None
 
 
 def _fill(draft: Path, results: Results, hourly: dict[str, pd.DataFrame], study_path: Path) -> None:
