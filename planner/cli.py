@@ -3,6 +3,7 @@
 Heavy libraries are imported inside commands, so that every `--help` answers at once.
 """
 
+import shlex
 import sys
 import traceback
 from collections.abc import Iterator
@@ -33,8 +34,11 @@ def new(folder: Path, kind: str) -> None:
     from planner.study.starter import write_starter
 
     study = write_starter(folder, kind)
-    click.echo(f"{study} is ready: read its comments, put your own files in place of the")
-    click.echo(f"starter's, then `flueprint check {study}` and `flueprint plan {study}`.")
+    place = shlex.quote(str(study))
+    click.echo(
+        f"{study} is ready. Read its comments, put your own files in place of the starter's,"
+    )
+    click.echo(f"then: flueprint check {place}\n      flueprint plan {place}")
 
 
 @cli.command()
@@ -56,7 +60,7 @@ def plan(study: Path, into: Path | None, processes: int | None) -> None:
     """Plan STUDY and write a results folder."""
     home = study if study.is_dir() else study.parent
     folder = _planned(study, into or home / "results", processes, "plan")
-    click.echo(f"\nResults: {folder}\nReport:  flueprint report {folder}")
+    click.echo(f"\nResults: {folder}\nReport:  flueprint report {shlex.quote(str(folder))}")
 
 
 @cli.command()

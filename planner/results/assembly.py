@@ -12,6 +12,7 @@ from planner.evaluate import Case
 from planner.explore.sweep import Exploration
 from planner.market import tariff_findings
 from planner.outcome.energy import energy_year, month_flows
+from planner.outcome.nox_limits import size_findings
 from planner.plant import GasFuel
 from planner.results import site_records
 from planner.results.option_records import dispatch_proof, option_outcome
@@ -81,7 +82,7 @@ def assemble(
         heading=site_records.heading(study),
         inputs=site_records.input_files(source),
         defaults=site_records.defaults(study),
-        findings=_findings(study, site_year, (separate, *cases), outcomes),
+        findings=_findings(study, fuel, site_year, (separate, *cases), outcomes),
         demand=site_records.demand(site_year),
         tariffs=site_records.tariffs(study, separate.prices, fuel),
         separate_supply=SeparateOutcome(
@@ -144,6 +145,7 @@ def _verdict(outcomes: Sequence[OptionOutcome]) -> Verdict:
 
 def _findings(
     study: Study,
+    fuel: GasFuel,
     site_year: SiteYear,
     all_cases: Sequence[Case],
     outcomes: Sequence[OptionOutcome],
@@ -153,6 +155,7 @@ def _findings(
     staged += [("market", f) for f in tariff_findings(study.power_tariff, site_year.step_h)]
     for case in all_cases:
         staged += [("plant", finding) for finding in case.plant.findings]
+    staged += [("outcome", finding) for finding in size_findings(study, fuel)]
     staged += [("explore", finding) for finding in _failed_variants(outcomes)]
     once = dict.fromkeys(staged)
     return [
