@@ -56,16 +56,17 @@ class _State:
         self._program.add_rows([*terms, state], high=high, **({"low": high} if equal else {}))
 
 
-def build_hull(window: Window, *, start_value: float, end_value: float) -> HullProgram:
-    """State the dispatch of a window, its borders free.
+def build_hull(window: Window, *, border_values: tuple[float, float] | None) -> HullProgram:
+    """State the dispatch of a window, the unit's state free at its borders.
 
     Parameters
     ----------
     window : Window
         Demands, prices and machines of some consecutive steps, with a unit.
-    start_value, end_value : float [currency/kWh]
-        Value of heat in the store at the window's borders. The levels there are free and priced,
-        and so is the unit's state: the programme bounds this window's part of a year from below.
+    border_values : tuple of float or None [currency/kWh]
+        Value of heat in the store at the window's beginning and end. The levels there are free and
+        priced: the programme bounds this window's part of a longer year from below. None for a
+        window that is the whole year: the store ends at the level at which it began.
 
     Returns
     -------
@@ -80,7 +81,7 @@ def build_hull(window: Window, *, start_value: float, end_value: float) -> HullP
         _part(program, window, on, unit=unit, running=unit is not None)
         for unit in (window.unit, None)
     ]
-    _store_rows(program, window, parts, start_value, end_value)
+    _store_rows(program, window, parts, border_values)
     _peak_rows(program, window, parts)
     program.offset = window.fixed_cost
     return HullProgram(program, on)
@@ -197,15 +198,20 @@ def _chiller_terms(
 
 
 def _store_rows(
-    program: Program, window: Window, parts: list[_Part], start_value: float, end_value: float
+    program: Program,
+    window: Window,
+    parts: list[_Part],
+    border_values: tuple[float, float] | None,
 ) -> None:
-    """The level follows the flows of both states; at the borders it is free and priced."""
+    """The level follows the flows of both states; its ends meet, or are free and priced."""
     store, step_h = window.store, window.step_h
     if store is None:
         return
     level = program.add_columns(window.steps, high=store.capacity_kWh)
-    first = program.add_columns(1, high=store.capacity_kWh, cost=start_value)
-    program.add_to_cost(level[-1:], -end_value)
+    first = level[-1:]
+    if border_values is not None:
+        first = program.add_columns(1, high=store.capacity_kWh, cost=border_values[0])
+        program.add_to_cost(level[-1:], -border_values[1])
     kept = 1.0 - store.loss_frac_per_h * step_h
     terms: list[Term] = [(1.0, level), (-kept, np.concatenate([first, level[:-1]]))]
     for part in parts:

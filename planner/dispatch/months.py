@@ -2,7 +2,8 @@
 
 Cut at the borders of billing months, a year falls into pieces that share only the unit's state and
 the store's level. With both left free at every border, and the level priced there alike on either
-side, the pieces' bounds add up to a bound on the year, whatever the prices of the level.
+side, the pieces' bounds add up to a bound on the year, whatever the prices of the level. A year of
+one piece keeps its level from end to beginning and is solved exactly.
 """
 
 import time
@@ -14,13 +15,16 @@ import numpy as np
 from loky import ProcessPoolExecutor
 
 from planner.arrays import BoolArray, FloatArray, IntArray
-from planner.dispatch.hull_program import build_hull
+from planner.dispatch.commitment import mended
+from planner.dispatch.hull_program import HullProgram, build_hull
+from planner.dispatch.program import NO_ANSWER, Answer
 from planner.dispatch.window import Window, part_of
+from planner.errors import SolveError
 
 #: Steps of a piece where no charge cuts the year.
 STEPS_WITHOUT_PERIODS = 730
 
-#: Where time ends before a month has a schedule, steps run whose relaxed state is above this.
+#: Steps run whose state is above this.
 HALF_ON = 0.5
 
 
@@ -48,8 +52,7 @@ class _Piece:
     """What one process needs to solve a month."""
 
     window: Window
-    start_value: float
-    end_value: float
+    border_values: tuple[float, float] | None
     gap_frac: float
 
 
@@ -126,7 +129,8 @@ def _pieces(
     for number, (first, after) in enumerate(pairwise(cuts)):
         window = _without_seen_periods(part_of(year, int(first), int(after - first)), seen)
         values = float(level_values[number]), float(level_values[number + 1])
-        yield _Piece(window, *values, gap_frac=gap_frac)
+        whole_year = window.steps == year.steps
+        yield _Piece(window, None if whole_year else values, gap_frac)
 
 
 def _answers(
@@ -145,19 +149,42 @@ def _answers(
 
 
 def _solve_piece(piece: _Piece, time_limit_s: float) -> MonthsAnswer:
-    """One month; where time ends before it has a schedule, what its relaxation leans to."""
+    """One month, begun from the best of some plain states."""
     started = time.perf_counter()
-    hull = build_hull(piece.window, start_value=piece.start_value, end_value=piece.end_value)
+    hull = build_hull(piece.window, border_values=piece.border_values)
     relaxed = hull.program.solve_relaxed()
-    state = relaxed.column_values[hull.on]
-    if np.array_equal(state, np.round(state)):
-        return MonthsAnswer(relaxed.bound, state > HALF_ON, in_time=True)
-    left_s = max(time_limit_s - (time.perf_counter() - started), 0.1)
-    answer = hull.program.solve(gap_frac=piece.gap_frac, time_limit_s=left_s)
-    on = (answer.column_values[hull.on] if answer.found else state) > HALF_ON
-    bound = max(answer.bound, relaxed.bound)
-    short = answer.objective - bound > piece.gap_frac * abs(answer.objective)
-    return MonthsAnswer(bound, on, in_time=answer.found and not short)
+    leaning = relaxed.column_values[hull.on]
+    first = _best_plain(piece.window, hull, leaning)
+    if _short(first, relaxed.bound, piece.gap_frac):
+        left_s = max(time_limit_s - (time.perf_counter() - started), 0.1)
+        found = hull.program.solve(gap_frac=piece.gap_frac, time_limit_s=left_s, first=first)
+        first = found if found.objective < first.objective else first
+        bound = max(found.bound, relaxed.bound)
+    else:
+        bound = relaxed.bound
+    on = first.column_values[hull.on] if first.found else leaning
+    return MonthsAnswer(bound, on > HALF_ON, in_time=not _short(first, bound, piece.gap_frac))
+
+
+def _short(answer: Answer, bound: float, gap_frac: float) -> bool:
+    """Whether the gap is still open."""
+    return not answer.found or answer.objective - bound > gap_frac * abs(answer.objective)
+
+
+def _best_plain(window: Window, hull: HullProgram, leaning: FloatArray) -> Answer:
+    """The cheapest of: what the relaxation leans to, always on, always off."""
+    best = NO_ANSWER
+    if window.unit is None:
+        return best
+    always = window.unit.available
+    for state in (leaning > HALF_ON, always, np.zeros_like(always)):
+        try:
+            on = mended(state, window).astype(np.float64)
+            tried = hull.program.solve_relaxed(fixed=(hull.on, on))
+        except SolveError:  # this state cannot serve the site; another may
+            continue
+        best = tried if tried.objective < best.objective else best
+    return best
 
 
 def _without_seen_periods(piece: Window, seen: set[int]) -> Window:

@@ -12,6 +12,7 @@ import numpy as np
 from scipy import sparse
 
 from planner.arrays import BoolArray, FloatArray, IntArray
+from planner.dispatch.hush import hush_banner
 from planner.errors import SolveError
 
 #: HiGHS counts bounds beyond this as infinite.
@@ -52,6 +53,10 @@ class Answer:
     def found(self) -> bool:
         """Whether there is a solution."""
         return self.column_values.size > 0
+
+
+#: What there is before anything was found.
+NO_ANSWER = Answer(np.zeros(0), INFINITY, -INFINITY, np.zeros(0))
 
 
 class Program:
@@ -161,7 +166,7 @@ class Program:
         factors = np.broadcast_to(np.asarray(coefficient, dtype=np.float64), (len(rows),))
         self._entries.append((rows, columns, factors))
 
-    def solve(self, *, gap_frac: float, time_limit_s: float) -> Answer:
+    def solve(self, *, gap_frac: float, time_limit_s: float, first: Answer = NO_ANSWER) -> Answer:
         """Solve with whole numbers, and read HiGHS's own bound.
 
         Parameters
@@ -170,6 +175,8 @@ class Program:
             Relative gap at which a solution is good enough.
         time_limit_s : float [s]
             After this the best solution so far is taken, with its honest bound.
+        first : Answer
+            A solution to begin with, if one is known.
 
         Returns
         -------
@@ -185,7 +192,7 @@ class Program:
         """
         whole = np.concatenate(self._whole)
         solver = _quiet_solver(gap_frac, time_limit_s)
-        _run(solver, self._model(whole=whole, fixed=None))
+        _run(solver, self._model(whole=whole, fixed=None), first)
         return _whole_answer(solver)
 
     def solve_relaxed(self, *, fixed: tuple[IntArray, FloatArray] | None = None) -> Answer:
@@ -245,6 +252,7 @@ class Program:
 
 def _quiet_solver(gap_frac: float, time_limit_s: float) -> highspy.Highs:
     """HiGHS with the settings under which the same input gives the same answer."""
+    hush_banner()
     solver = highspy.Highs()
     for name, value in (
         ("output_flag", False),
@@ -257,10 +265,14 @@ def _quiet_solver(gap_frac: float, time_limit_s: float) -> highspy.Highs:
     return solver
 
 
-def _run(solver: highspy.Highs, model: highspy.HighsLp) -> None:
+def _run(solver: highspy.Highs, model: highspy.HighsLp, first: Answer = NO_ANSWER) -> None:
     """Load and run, or say that HiGHS failed."""
     if solver.passModel(model) == highspy.HighsStatus.kError:
         raise SolveError("HiGHS refused the model")
+    if first.found:
+        begun = highspy.HighsSolution()
+        begun.col_value = first.column_values
+        solver.setSolution(begun)
     if solver.run() == highspy.HighsStatus.kError:
         # Where something else in this process used another number of threads, HiGHS does not start
         # until its scheduler is made anew.

@@ -38,6 +38,9 @@ MONTH_SHARE = 0.6
 #: Share of the time left that one round may take, so that a better one can follow.
 ROUND_SHARE = 0.6
 
+#: The fast engine's gap is poor where it is this many times the asked one: months are tried too.
+POOR_RATIO = 10.0
+
 #: A bound may lie above a cost by this share: the solver's own tolerance.
 ROUNDING_FRAC = 1e-6
 
@@ -164,13 +167,24 @@ class _Search:
         """Bound and schedule of a year with a unit, by the way that suits its shape."""
         unknown = why_unknown(self._year)
         if unknown is not None:
-            return self._by_months(unknown)
+            return self._by_months(f"the faster way does not know {unknown}")
+        try:
+            found = self._by_prices()
+        except SolveError as error:
+            return self._by_months(f"the faster way failed: {error}")
+        poor = found.year.cost - found.bound > POOR_RATIO * self._gap_frac * abs(found.year.cost)
+        if poor and time.perf_counter() < self._deadline:
+            return _better(found, self._by_months("the faster way left a wide gap"))
+        return found
+
+    def _by_prices(self) -> _Found:
+        """Bound and state from a dynamic programme over prices of stored heat."""
         self._told("the year by prices of stored heat", 0.1)
         quick = solve_window(self._year, self._gap_frac)
-        year = self._tried(quick["on"])
-        return _Found(year, quick["lb"], QUICK_PATH)
+        self._told("the year with its state", 0.6)
+        return _Found(self._tried(quick["on"]), quick["lb"], QUICK_PATH)
 
-    def _by_months(self, unknown: str) -> _Found:
+    def _by_months(self, reason: str) -> _Found:
         """Bound and schedule from months solved apart, improved until the gap is good enough."""
         best: FixedYear | None = None
         bound, rounds = -np.inf, 0
@@ -195,8 +209,7 @@ class _Search:
         ended = "to the asked gap" if months.in_time else "until their time was over"
         path = (
             f"{len(borders(self._year)) - 1} months apart for bound and state, solved {ended}, "
-            f"then the year as a linear programme with that state; {rounds} round(s); "
-            f"the faster way does not know {unknown}"
+            f"then the year as a linear programme with that state; {rounds} round(s); {reason}"
         )
         return _Found(best, bound, path)
 
@@ -227,3 +240,10 @@ class _Search:
             except InfeasibleError:
                 continue
         return solve_fixed(self._year, states[-1])
+
+
+def _better(one: _Found, other: _Found) -> _Found:
+    """The cheaper year of two ways, with the higher of their bounds."""
+    cheaper = one if one.year.cost <= other.year.cost else other
+    path = f"{one.path}; then {other.path}; the better of both"
+    return _Found(cheaper.year, max(one.bound, other.bound), path)
