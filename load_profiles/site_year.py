@@ -1,13 +1,16 @@
 """`SiteYear`: one clean year of a site's demands and weather, the one thing handed on."""
 
 from dataclasses import dataclass
+from typing import Literal
 
 import pandas as pd
 
 from load_profiles.findings import Finding
 
+Carrier = Literal["power", "steam", "hot_water", "hot_gas", "cooling"]
+
 #: Demand columns of `SiteYear.hourly`, in the order in which the plant serves them.
-CARRIERS = ("power", "steam", "hot_water", "hot_gas", "cooling")
+CARRIERS: tuple[Carrier, ...] = ("power", "steam", "hot_water", "hot_gas", "cooling")
 
 #: Weather columns of `SiteYear.hourly`.
 WEATHER_COLUMNS = ("ambient_degC", "relative_humidity_frac", "pressure_kPa")

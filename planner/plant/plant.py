@@ -1,12 +1,14 @@
 """`Plant`: everything that can serve the site under one option, exact and as envelope."""
 
-from dataclasses import dataclass
+from dataclasses import dataclass, field
+from functools import lru_cache
 
 import pandas as pd
 
 from load_profiles import Finding, SiteYear
+from load_profiles.site_year import WEATHER_COLUMNS
 from planner.plant.audit import audit_findings, refuse_impossible_sheet
-from planner.plant.envelope import OperatingEnvelope, StoreEnvelope
+from planner.plant.envelope import OperatingEnvelope, StoreEnvelope, UnitEnvelope
 from planner.plant.fuel import GasFuel
 from planner.plant.heaters import chiller_envelopes, heater_envelope
 from planner.plant.machine_record import machine_record
@@ -14,7 +16,7 @@ from planner.plant.plant_findings import site_findings, unit_findings
 from planner.plant.running import RunningPoint
 from planner.plant.unit_year import UnitYear, exact_hours, unit_envelope, unit_year
 from planner.results.records import Machine
-from planner.study.sections import Option
+from planner.study.sections import Heat, Option
 from planner.study.study import Study
 
 SEPARATE_SUPPLY = "Separate supply"
@@ -85,6 +87,67 @@ class Plant:
         return machine_record(self.year)
 
 
+@dataclass(frozen=True)
+class _Placed:
+    """A machine at a place: what its year depends on, to tell one from another.
+
+    Variants of prices, demand and boilers leave it as it is; working it out again for each would
+    take longer than their dispatch.
+    """
+
+    option: Option
+    heat: Heat
+    composition: tuple[tuple[str, float], ...]
+    supply_kPa_gauge: float
+    clock: tuple[str, str]
+    weather: bytes
+    wear: tuple[float, float, float]
+    study: Study = field(compare=False)
+    site_year: SiteYear = field(compare=False)
+    fuel: GasFuel = field(compare=False)
+
+    @classmethod
+    def of(
+        cls,
+        study: Study,
+        option: Option,
+        site_year: SiteYear,
+        fuel: GasFuel,
+        wear: tuple[float, float, float],
+    ) -> "_Placed":
+        """The machine of an option of a study."""
+        hourly = site_year.hourly
+        return cls(
+            option=option.model_copy(update={"capital": (), "avoided": ()}),
+            heat=study.heat,
+            composition=tuple(sorted(study.fuel.composition_mol_frac.items())),
+            supply_kPa_gauge=study.fuel.supply_pressure_kPa_gauge,
+            clock=(site_year.time_zone, str(hourly.index[0])),
+            weather=hourly[list(WEATHER_COLUMNS)].to_numpy().tobytes(),
+            wear=wear,
+            study=study,
+            site_year=site_year,
+            fuel=fuel,
+        )
+
+
+@lru_cache(maxsize=8)
+def _worked_out(
+    placed: _Placed,
+) -> tuple[UnitYear, UnitEnvelope, RunningPoint, tuple[Finding, ...]]:
+    """Exact model, envelope, clean full load and findings of a machine at a place."""
+    names = [option.name for option in placed.study.option]
+    year = unit_year(placed.study, placed.option, placed.site_year, placed.fuel)
+    number = names.index(placed.option.name) + 1
+    refuse_impossible_sheet(year.turbine, placed.fuel, f"option[{number}].unit.sheet")
+    unit, full = unit_envelope(year, placed.wear)
+    findings = (
+        *audit_findings(year.turbine, placed.option.name),
+        *unit_findings(placed.study, placed.option, year, full, placed.site_year),
+    )
+    return year, unit, full, findings
+
+
 def build_plant(
     study: Study,
     option: Option | None,
@@ -125,14 +188,8 @@ def build_plant(
         findings = site_findings(study, site_year)
         envelope = OperatingEnvelope(SEPARATE_SUPPLY, (), heaters, chillers, None, findings)
         return Plant(envelope, findings, None, None)
-    year = unit_year(study, option, site_year, fuel)
-    number = study.option.index(option) + 1 if option in study.option else 1
-    refuse_impossible_sheet(year.turbine, fuel, f"option[{number}].unit.sheet")
-    unit, full = unit_envelope(year, wear)
-    findings = (
-        *audit_findings(year.turbine, option.name),
-        *unit_findings(study, option, year, full, site_year),
-    )
+    placed = _Placed.of(study, option, site_year, fuel, wear)
+    year, unit, full, findings = _worked_out(placed)
     store = option.store
     envelope = OperatingEnvelope(
         name=option.name,

@@ -126,7 +126,7 @@ def demand(site_year: SiteYear) -> Demand:
         Carriers without demand are left out.
     """
     hourly = site_year.hourly
-    wanted = [name for name in CARRIERS if hourly[f"{name}_kW"].to_numpy().any()]
+    wanted: list[Carrier] = [name for name in CARRIERS if hourly[f"{name}_kW"].to_numpy().any()]
     heat_kW = hourly["steam_kW"] + hourly["hot_water_kW"] + hourly["hot_gas_kW"]
     by_day = heat_kW.groupby(_standard_days(site_year)).mean()
     return Demand(
