@@ -73,9 +73,8 @@ def _unit_flows(solved: FixedYear) -> dict[str, FloatArray]:
     segments_kW = solved.built.segments_kW(values, unit.segment_power_kW.shape)
     above_kW = segments_kW.sum(axis=1)
     flows["unit_power_kW"] = unit.minimum_power_kW * on + above_kW
-    fuel_lhv_kW = np.asarray(
-        unit.fuel_at_minimum_lhv_kW * on + (unit.fuel_slope_lhv * segments_kW).sum(axis=1)
-    )
+    above_lhv_kW = (unit.fuel_slope_lhv * segments_kW).sum(axis=1)
+    fuel_lhv_kW = np.asarray(unit.fuel_at_minimum_lhv_kW * on + above_lhv_kW, dtype=np.float64)
     flows["unit_fuel_lhv_kW"] = fuel_lhv_kW
     flows["start_fuel_lhv_kW"] = starts_of(on) * (unit.start_fuel_lhv_kWh / year.step_h)
     flows |= _shares(year, columns, values, fuel_lhv_kW)

@@ -16,15 +16,18 @@ from planner.plant.envelope import (
     UnitEnvelope,
 )
 
+#: One value for all steps, or one a step.
+Steps = float | list[float] | FloatArray
+
 CARRIERS = ("power", "steam", "hot_water", "hot_gas", "cooling")
 
 
-def steady(value: float | FloatArray, steps: int) -> FloatArray:
+def steady(value: Steps, steps: int) -> FloatArray:
     """An array of one value a step."""
     return np.array(np.broadcast_to(np.asarray(value, dtype=np.float64), (steps,)))
 
 
-def demands(steps: int, *, first: str = "2025-01-01", **kW: float | FloatArray) -> pd.DataFrame:
+def demands(steps: int, *, first: str = "2025-01-01", **kW: Steps) -> pd.DataFrame:
     """An hourly frame of demands; carriers that are not named are zero."""
     index = pd.date_range(first, periods=steps, freq="h", tz="UTC")
     columns = {f"{name}_kW": steady(kW.get(name, 0.0), steps) for name in CARRIERS}
@@ -34,9 +37,9 @@ def demands(steps: int, *, first: str = "2025-01-01", **kW: float | FloatArray) 
 def money(
     steps: int,
     *,
-    import_price: float | FloatArray = 0.10,
-    export_price: float | FloatArray = 0.0,
-    fuel_price: float | FloatArray = 0.03,
+    import_price: Steps = 0.10,
+    export_price: Steps = 0.0,
+    fuel_price: Steps = 0.03,
     import_limit_kW: float = 1e5,
     export_limit_kW: float = 0.0,
     charges: tuple[DemandCharge, ...] = (),
