@@ -73,7 +73,7 @@ def draw_energy_flow(energy: dict[str, Any], heater_name: str) -> str:
     y = _node(picture, ("Gas to the unit", "Gas turbine"), unit, y + 7.5)
     y = _node(picture, (f"Gas to {heater_name}", upper_first(heater_name)), heaters, y + 8.0)
     feet = [sink.top_mm + sink.total_GWh * scale_mm for sink in sinks.values()]
-    picture.drawing.height_mm = max(y, *feet) + 4.0
+    picture.drawing.height_mm = max([y, *feet]) + 4.0
     for sink in sinks.values():
         _name_sink(picture, sink)
     return picture.drawing.svg()

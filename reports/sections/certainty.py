@@ -5,6 +5,7 @@ from typing import Any
 from reports.charts.price_curve import draw_price_curve
 from reports.figures import Figure, Figures
 from reports.numbers import (
+    THIN,
     money,
     number,
     percent,
@@ -107,16 +108,17 @@ def _row(results: ResultsFolder, variant: Facts) -> dict[str, Any]:
             _or_nothing(variant["annual_saving"], lambda v: money(v, currency)),
             "never" if payback is None and solved else _or_nothing(payback, lambda v: number(v, 1)),
             _or_nothing(hours, number),
-            _or_nothing(gap, small_percent),
+            _or_nothing(gap, _gap),
         ],
-        "status": "solved"
-        if solved
-        else f"failed: {variant['note']}"
-        if variant["note"]
-        else "failed",
+        "failed": "" if solved else f"no answer: {variant['note'] or 'failed'}",
         "loses": variant["npv_real"] is not None and variant["npv_real"] <= 0.0,
         "strong": variant["factor"] in ("base", "combined_bad"),
     }
+
+
+def _gap(fraction: float) -> str:
+    """A gap, short enough for a column."""
+    return small_percent(fraction).replace(f"below{THIN}", "<")
 
 
 def _places(change: float) -> int:

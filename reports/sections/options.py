@@ -56,7 +56,6 @@ def _row(results: ResultsFolder, option: Facts) -> dict[str, Any]:
             money(economics["capital"]["total"], currency),
             f"{significant(carbon['lifetime_saved_t'])}\u202ft",
             option["nox"]["status"],
-            number(option["running"]["run_hours"]),
         ],
     }
 
