@@ -71,12 +71,13 @@ def _unit_flows(solved: FixedYear) -> dict[str, FloatArray]:
         return flows | shares | heats
     columns, values = solved.built.columns, solved.answer.column_values
     segments_kW = solved.built.segments_kW(values, unit.segment_power_kW.shape)
-    above_kW = segments_kW.sum(axis=1)
-    flows["unit_power_kW"] = unit.minimum_power_kW * on + above_kW
+    running = on.astype(np.float64)
+    power_kW = unit.minimum_power_kW * running + segments_kW.sum(axis=1)
     above_lhv_kW = (unit.fuel_slope_lhv * segments_kW).sum(axis=1)
-    fuel_lhv_kW = np.asarray(unit.fuel_at_minimum_lhv_kW * on + above_lhv_kW, dtype=np.float64)
+    fuel_lhv_kW = unit.fuel_at_minimum_lhv_kW * running + above_lhv_kW
+    flows["unit_power_kW"] = power_kW
     flows["unit_fuel_lhv_kW"] = fuel_lhv_kW
-    flows["start_fuel_lhv_kW"] = starts_of(on) * (unit.start_fuel_lhv_kWh / year.step_h)
+    flows["start_fuel_lhv_kW"] = flows["unit_start"] * (unit.start_fuel_lhv_kWh / year.step_h)
     flows |= _shares(year, columns, values, fuel_lhv_kW)
     return flows | _unit_heat(year, columns, values)
 

@@ -12,8 +12,9 @@ import pandas as pd
 
 from load_profiles import Fault
 from planner.arrays import FloatArray
+from planner.dispatch.program import Answer
 from planner.dispatch.window import Window, power_without_chillers_kW
-from planner.dispatch.year_program import build
+from planner.dispatch.year_program import WindowProgram, build
 from planner.errors import UnmetDemandError
 from planner.market.prices import Prices
 from planner.plant.envelope import OperatingEnvelope
@@ -23,6 +24,10 @@ TOLERANCE_FRAC = 1e-9
 
 #: And less than this share of the largest demand where a solver found it.
 LOCATED_FRAC = 1e-6
+
+#: Whole numbers in the search for a shortfall are decided no closer and no longer than this.
+LOCATED_GAP_FRAC = 0.01
+LOCATED_LIMIT_S = 60.0
 
 
 def refuse_unmet_demand(envelope: OperatingEnvelope, prices: Prices, hourly: pd.DataFrame) -> None:
@@ -63,10 +68,19 @@ def locate_shortfall(year: Window, index: pd.Index) -> None:
         For each carrier that falls short: the worst hour, how much, in how many hours.
     """
     built = build(year, outside_supply=True)
-    answer = built.program.solve_relaxed()
+    faults = _located(year, index, built, built.program.solve_relaxed())
+    if not faults:  # only a unit that is half on could serve the site
+        answer = built.program.solve(gap_frac=LOCATED_GAP_FRAC, time_limit_s=LOCATED_LIMIT_S)
+        faults = _located(year, index, built, answer)
+    if faults:
+        raise UnmetDemandError(tuple(faults))
+
+
+def _located(year: Window, index: pd.Index, built: WindowProgram, answer: Answer) -> list[Fault]:
+    """A fault for each carrier that a solution takes from outside."""
     faults = []
     for carrier, columns in built.columns.outside.items():
-        short_kW = answer.column_values[columns]
+        short_kW = answer.column_values[columns] if answer.found else np.zeros(year.steps)
         least_kW = LOCATED_FRAC * max(float(year.demand_kW[carrier].max()), 1.0)
         if short_kW.max() > least_kW:
             worst = int(short_kW.argmax())
@@ -76,8 +90,7 @@ def locate_shortfall(year: Window, index: pd.Index) -> None:
                 f"{int((short_kW > least_kW).sum())} steps; raise a capacity or mend the demand"
             )
             faults.append(Fault(f"{carrier} demand", came, must))
-    if faults:
-        raise UnmetDemandError(tuple(faults))
+    return faults
 
 
 def _shortfalls(

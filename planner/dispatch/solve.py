@@ -170,7 +170,7 @@ class _Search:
             return self._by_months(f"the faster way does not know {unknown}")
         try:
             found = self._by_prices()
-        except SolveError as error:
+        except (SolveError, RuntimeError) as error:  # whatever it died of, months are tried
             return self._by_months(f"the faster way failed: {error}")
         poor = found.year.cost - found.bound > POOR_RATIO * self._gap_frac * abs(found.year.cost)
         if poor and time.perf_counter() < self._deadline:

@@ -3,11 +3,12 @@
 import numpy as np
 import pandas as pd
 
-from planner.arrays import BoolArray, FloatArray
+from planner.arrays import FloatArray
+from planner.dispatch.machine_checks import machine_complaints
 from planner.dispatch.schedule import Schedule
 from planner.errors import SolveError
 from planner.market.prices import Prices
-from planner.plant.envelope import OperatingEnvelope, UnitEnvelope
+from planner.plant.envelope import OperatingEnvelope
 
 #: Balances close to this share of the carrier's largest flow in the year, money of its cost.
 TOLERANCE_FRAC = 1e-6
@@ -40,9 +41,9 @@ def verify(
     flows = schedule.hourly
     complaints = [
         *_negative(flows),
-        *_balances(flows, envelope, hourly),
+        *_balances(flows, envelope, hourly, prices.step_h),
         *_limits(flows, envelope, prices),
-        *_minimum_times(flows, envelope, prices.step_h),
+        *machine_complaints(flows, envelope, prices.step_h),
         *_money(schedule, envelope, prices),
     ]
     if complaints:
@@ -55,7 +56,10 @@ def _array(flows: pd.DataFrame, name: str) -> FloatArray:
 
 
 def _negative(flows: pd.DataFrame) -> list[str]:
-    """Flows are never negative; prices may be."""
+    """Everything is a number; flows are never negative, prices may be."""
+    unknown = [str(name) for name in flows.columns if not np.isfinite(_array(flows, name)).all()]
+    if unknown:
+        return [f"{name} is not a number in every step" for name in unknown]
     names = [n for n in flows.columns if not n.startswith("price_")]
     lowest = flows[names].min()
     largest = flows[names].abs().max()
@@ -63,14 +67,16 @@ def _negative(flows: pd.DataFrame) -> list[str]:
     return [f"{name} falls to {lowest[name]:.3g}" for name in lowest.index[wrong]]
 
 
-def _balances(flows: pd.DataFrame, envelope: OperatingEnvelope, hourly: pd.DataFrame) -> list[str]:
+def _balances(
+    flows: pd.DataFrame, envelope: OperatingEnvelope, hourly: pd.DataFrame, step_h: float
+) -> list[str]:
     """Supply less use of each carrier."""
     open_kW = {
         "power": _power_imbalance_kW(flows, envelope, hourly),
         "cooling": _array(flows, "electric_cooling_kW")
         + _array(flows, "absorption_cooling_kW")
         - hourly["cooling_kW"].to_numpy(),
-        "store": _store_imbalance(flows, envelope, hourly),
+        "store": _store_imbalance(flows, envelope, step_h),
     }
     driven = {c.drive for c in envelope.chillers}
     for grade in GRADES:
@@ -114,22 +120,18 @@ def _power_imbalance_kW(
     return supplied_kW - used_kW - _array(flows, "grid_export_kW")
 
 
-def _store_imbalance(
-    flows: pd.DataFrame, envelope: OperatingEnvelope, hourly: pd.DataFrame
-) -> FloatArray:
+def _store_imbalance(flows: pd.DataFrame, envelope: OperatingEnvelope, step_h: float) -> FloatArray:
     """Level at a step's end less what the step before and the flows make of it; the year closes."""
     level, store = _array(flows, "store_level_kWh"), envelope.store
     if store is None:
         return level
-    instants = pd.DatetimeIndex(hourly.index)
-    step_h = (instants[1] - instants[0]).total_seconds() / 3600.0
     kept = 1.0 - store.loss_frac_per_h * step_h
     moved = step_h * (_array(flows, "store_charge_kW") - _array(flows, "store_discharge_kW"))
     return np.asarray(level - kept * np.roll(level, 1) - moved)
 
 
 def _limits(flows: pd.DataFrame, envelope: OperatingEnvelope, prices: Prices) -> list[str]:
-    """Connection, heaters, chillers, store and unit within what they can do."""
+    """Connection, heaters, chillers and store within what they can do."""
     limits: list[tuple[str, float]] = [
         ("grid_import_kW", prices.import_limit_kW),
         ("grid_export_kW", prices.export_limit_kW),
@@ -137,73 +139,21 @@ def _limits(flows: pd.DataFrame, envelope: OperatingEnvelope, prices: Prices) ->
     for grade in GRADES:
         heaters = [h.maximum_heat_kW for h in envelope.heaters if h.carrier == grade]
         limits.append((f"heater_{grade}_kW", sum(heaters)))
+    for kind in ("electric", "absorption"):
+        chillers = [c for c in envelope.chillers if (c.drive == "power") == (kind == "electric")]
+        most_kW = sum((c.maximum_cooling_kW for c in chillers), 0.0)
+        limits.append((f"{kind}_cooling_kW", most_kW))
     store = envelope.store
     limits += [
         ("store_level_kWh", store.capacity_kWh if store else 0.0),
         ("store_charge_kW", store.maximum_charge_kW if store else 0.0),
         ("store_discharge_kW", store.maximum_discharge_kW if store else 0.0),
     ]
-    complaints = [
+    return [
         f"{name} reaches {flows[name].max():.6g}, limit {limit:.6g}"
         for name, limit in limits
         if not flows[name].max() <= limit + TOLERANCE_FRAC * max(limit, 1.0)
     ]
-    return complaints + [c for unit in envelope.units for c in _unit_limits(flows, unit)]
-
-
-def _unit_limits(flows: pd.DataFrame, unit: UnitEnvelope) -> list[str]:
-    """The unit between its minimum and maximum while on and available, at zero while off."""
-    on, power_kW = _array(flows, "unit_on"), _array(flows, "unit_power_kW")
-    slack_kW = TOLERANCE_FRAC * float(unit.maximum_power_kW.max())
-    complaints = []
-    if ((on > 0) & ~unit.available).any():
-        complaints.append("the unit runs in an outage")
-    if (power_kW > on * unit.maximum_power_kW + slack_kW).any():
-        complaints.append("the unit makes more than it can, or makes power while off")
-    if (power_kW < on * unit.minimum_power_kW - slack_kW).any():
-        complaints.append("the unit runs below its minimum")
-    least_lhv_kW = _least_fuel_lhv_kW(unit, on, power_kW)
-    if (np.abs(_array(flows, "unit_fuel_lhv_kW") - least_lhv_kW) > slack_kW).any():
-        complaints.append("the unit's fuel is not that of its power")
-    return complaints
-
-
-def _least_fuel_lhv_kW(unit: UnitEnvelope, on: FloatArray, power_kW: FloatArray) -> FloatArray:
-    """Fuel of a power, its segments filled in order."""
-    left_kW = np.maximum(power_kW - on * unit.minimum_power_kW, 0.0)
-    fuel_lhv_kW = on * unit.fuel_at_minimum_lhv_kW
-    for k in range(unit.segment_power_kW.shape[1]):
-        taken_kW = np.minimum(left_kW, unit.segment_power_kW[:, k])
-        fuel_lhv_kW = fuel_lhv_kW + unit.fuel_slope_lhv[:, k] * taken_kW
-        left_kW = left_kW - taken_kW
-    return np.asarray(fuel_lhv_kW)
-
-
-def _minimum_times(flows: pd.DataFrame, envelope: OperatingEnvelope, step_h: float) -> list[str]:
-    """Runs and stops that begin and end within the year are long enough."""
-    if not envelope.units:
-        return []
-    unit = envelope.units[0]
-    on = _array(flows, "unit_on") > 0
-    lengths, running = _inner_runs(on)
-    complaints = []
-    for kind, wanted_h, state in (
-        ("run", unit.minimum_up_h, True),
-        ("stop", unit.minimum_down_h, False),
-    ):
-        kept = lengths[running == state] * step_h
-        if kept.size and kept.min() < wanted_h - 0.5 * step_h:
-            complaints.append(f"a {kind} of {kept.min():g} h is shorter than {wanted_h:g} h")
-    started = np.concatenate([[False], on[1:] & ~on[:-1]])
-    if not np.array_equal(started, _array(flows, "unit_start") > 0):
-        complaints.append("the starts are not those of the state")
-    return complaints
-
-
-def _inner_runs(on: BoolArray) -> tuple[np.ndarray, BoolArray]:
-    """Lengths in steps of all runs and stops but the first and the last, and which they are."""
-    changes = np.flatnonzero(np.diff(on.astype(np.int8))) + 1
-    return np.diff(changes), on[changes[:-1]]
 
 
 def _money(schedule: Schedule, envelope: OperatingEnvelope, prices: Prices) -> list[str]:

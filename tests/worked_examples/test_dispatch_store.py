@@ -10,7 +10,8 @@ By hand first hour: the unit at 100 kW burns 12.00 in place of 30.00 of import. 
         costs 5.00; running would cost at least 50 x 0.12 + 50 x 0.05 = 8.50, more than 5.00 and
         the 75 kW of heat at 0.0444 together (3.33). Boiler 90 / 0.9 x 0.04 = 4.00.
         Without store 12 + 5 + 4 = 21.00. With store the first hour stores 90 / 0.9 = 100 kWh of
-        its 150 and the second takes 90: 17.00; the other 50 kW are bypassed or dumped, all the same.
+        its 150 and the second takes 90: 17.00; the other 50 kW go
+        unused.
 Differs nothing.
 """
 
