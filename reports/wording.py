@@ -1,7 +1,10 @@
 """Words that several sections share: names of carriers, of options, lists in a sentence."""
 
+import re
 from collections.abc import Sequence
 from typing import Any
+
+from reports.numbers import THIN
 
 CARRIERS = {
     "power": "power",
@@ -22,6 +25,9 @@ FACTORS = {
     "base": "As planned",
     "break_even": "Break-even",
 }
+
+#: A comma between thousands.
+THOUSANDS = re.compile(r"(?<=\d),(?=\d{3}(?!\d))")
 
 TESTS = {
     "eu_high_efficiency": "EU high-efficiency cogeneration",
@@ -52,8 +58,15 @@ def with_article(name: str) -> str:
 
 
 def upper_first(sentence: str) -> str:
-    """A sentence with its first letter large."""
-    return sentence[:1].upper() + sentence[1:]
+    """A sentence with its first letter large; a field's name stays as it is.
+
+    Examples
+    --------
+    >>> upper_first("one gap"), upper_first("power_kW: one gap")
+    ('One gap', 'power_kW: one gap')
+    """
+    first = sentence.split(" ", 1)[0]
+    return sentence if "_" in first or "." in first[:-1] else sentence[:1].upper() + sentence[1:]
 
 
 def listed(words: Sequence[str]) -> str:
@@ -75,7 +88,7 @@ def shortened(text: str, letters: int) -> str:
     Examples
     --------
     >>> shortened("a turbine with a store", 15)
-    'a turbine with…'
+    'a turbine…'
     """
     if len(text) <= letters:
         return text
@@ -83,9 +96,18 @@ def shortened(text: str, letters: int) -> str:
     return (cut.rsplit(" ", 1)[0] if " " in cut else cut) + "…"
 
 
-def real_subscripts(text: str) -> str:
-    """CO2 as it is written in print."""
-    return text.replace("CO2", "CO₂").replace("Nm3", "Nm³")
+def printed(text: str) -> str:
+    """A text of the results with the report's own signs for units and thousands.
+
+    Examples
+    --------
+    >>> printed("4,200,000 kWh at 25 degC, 0.5 t CO2").replace(THIN, "_")
+    '4_200_000 kWh at 25 °C, 0.5 t CO₂'
+    """
+    text = THOUSANDS.sub(THIN, text)
+    for plain, real in (("CO2", "CO₂"), ("Nm3", "Nm³"), (" degC", " °C")):
+        text = text.replace(plain, real)
+    return text
 
 
 def capital_line(name: str) -> str:

@@ -73,9 +73,11 @@ def draw_durations(curves: Sequence[Curve], step_h: float) -> str:
     ordered_MW = [np.sort(curve.values_kW)[::-1] / 1e3 for curve in curves]
     for curve, values in zip(curves, ordered_MW, strict=True):
         plot.drawing.polyline(_points(plot, values), stroke=curve.colour, width_pt=1.2)
+    taken: list[tuple[float, float, float]] = []
     for place, curve in enumerate(curves):
         others = [values for other, values in enumerate(ordered_MW) if other != place]
-        left, height = _clear_place(plot, ordered_MW[place], others, curve.name)
+        left, height = _clear_place(plot, ordered_MW[place], others, curve.name, taken)
+        taken.append((left, left + text_width_mm(curve.name), height))
         plot.drawing.text(left, height, curve.name, fill=curve.colour, bold=True)
     return plot.drawing.svg()
 
@@ -118,20 +120,22 @@ def draw_shares(demand_kW: Array, parts: Sequence[Curve], step_h: float) -> str:
 
 
 def _clear_place(
-    plot: _Plot, values: Array, others: Sequence[Array], name: str
+    plot: _Plot,
+    values: Array,
+    others: Sequence[Array],
+    name: str,
+    taken: Sequence[tuple[float, float, float]],
 ) -> tuple[float, float]:
-    """Where a line's name stands over it, farthest from every other line."""
-    x, y = plot.x, plot.y
+    """Where a line's name stands over it, farthest from every other line and name."""
     width = text_width_mm(name)
     best = (-1.0, LEFT, TOP)
     for left in np.linspace(LEFT + 6.0, RIGHT - width - 2.0, 40):
-        ends = [
-            round((place - LEFT) / (RIGHT - LEFT) * x.high / plot.step_h)
-            for place in (left, left + width)
-        ]
-        height = y(float(values[ends[0]])) - 1.0
-        crossing = [y(float(other[place])) for other in others for place in ends]
-        room = min((_distance(height, line) for line in crossing), default=9.0)
+        under_hours = (np.linspace(left, left + width, 5) - LEFT) / (RIGHT - LEFT) * plot.x.high
+        under = np.minimum((under_hours / plot.step_h).astype(int), len(values) - 1)
+        height = plot.y(float(values[under[0]])) - 1.0
+        lines = [plot.y(float(other[place])) for other in others for place in under]
+        lines += [y - 1.0 for start, end, y in taken if start < left + width and left < end]
+        room = min((_distance(height, line) for line in lines), default=9.0)
         if room > best[0] + 0.2 and height - 2.0 > TOP:
             best = (room, float(left), height)
     return best[1], best[2]

@@ -75,21 +75,21 @@ def draw_week(
     drawing = Drawing(WIDTH, TOP + PLOT + 4.4)
     drawing.text(0.0, 2.6, f"MW {what}", fill=GREY)
     left_axis(drawing, y, LEFT, most=4)
-    unnamed = []
+    drawn = []
     lower = np.zeros(len(demand_kW))
     for band in bands:
         upper = lower + band.values_kW / 1e3
         edges = _steps(upper, x, y), _steps(lower, x, y)
         drawing.area(*edges, band.colour)
-        if not _named(drawing, band, *edges):
-            unnamed.append((band.colour, band.name))
+        drawn.append((band, *edges))
         lower = upper
     if below is not None and lowest < 0.0:
         drawing.area(_steps(0.0 * lower, x, y), _steps(-below.values_kW / 1e3, x, y), below.colour)
-        unnamed.append((below.colour, below.name))
     drawing.polyline(_steps(demand_kW / 1e3, x, y), stroke=INK, width_pt=0.8)
     _day_axis(drawing, y, days)
-    _key(drawing, unnamed)
+    unnamed = [band for band, *edges in drawn if not _named(drawing, band, *edges)]
+    unnamed += [below] if below is not None and lowest < 0.0 else []
+    _key(drawing, [(band.colour, band.name) for band in unnamed])
     return drawing.svg()
 
 

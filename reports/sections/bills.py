@@ -6,7 +6,7 @@ from typing import Any
 from reports.figures import Figures
 from reports.numbers import money, number, signed
 from reports.results_folder import Facts, ResultsFolder
-from reports.wording import real_subscripts, with_article
+from reports.wording import printed, with_article
 
 SECTIONS = {
     "power": "Power",
@@ -16,6 +16,9 @@ SECTIONS = {
     "upkeep": "Upkeep and wear",
 }
 NOTHING = "–"
+
+#: Bills longer than this leave no room for the contents on their page.
+MOST_LINES_WITH_CONTENTS = 30
 
 
 def bills(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
@@ -28,11 +31,17 @@ def bills(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
         "title": f"The yearly bill {'falls' if falls else 'rises'} from "
         f"{money(today['total'], currency)} to {money(then['total'], currency)}",
         "option": with_article(option["name"]),
+        "is_short": len({*_names(today), *_names(then)}) <= MOST_LINES_WITH_CONTENTS,
         "groups": _groups(today["lines"], then["lines"]),
         "total": _amounts(today["total"], then["total"]),
         "bridge": _bridge(results),
         "share": _biggest(today["lines"], then["lines"], currency),
     }
+
+
+def _names(bill: Facts) -> list[tuple[str, str]]:
+    """Lines of a bill by their names."""
+    return [(line["section"], line["line"]) for line in bill["lines"]]
 
 
 def _groups(today: list[Facts], then: list[Facts]) -> list[dict[str, Any]]:
@@ -79,7 +88,7 @@ def _row(name: str, today: Facts | None, then: Facts | None) -> dict[str, Any]:
     known = today or then or {}
     unit = str(known["quantity_unit"])
     return {
-        "name": real_subscripts(name),
+        "name": printed(name),
         "quantities": [_quantity(line) for line in (today, then)],
         "unit": _unit(unit),
         "rate": _rate(float(known["rate"]), unit),
@@ -98,7 +107,7 @@ def _quantity(line: Facts | None) -> str:
 def _unit(unit: str) -> str:
     """Unit of a quantity as printed."""
     words = unit.replace("kWh", "MWh") if unit.startswith("kWh") else unit
-    return real_subscripts(words)
+    return printed(words)
 
 
 def _rate(rate: float, unit: str) -> str:

@@ -7,7 +7,7 @@ from reports.charts.nox_band import draw_nox_band
 from reports.figures import Figure, Figures
 from reports.numbers import number, percent, significant
 from reports.results_folder import Facts, ResultsFolder
-from reports.wording import TESTS, real_subscripts
+from reports.wording import TESTS, printed
 
 NOTHING = "–"
 
@@ -65,12 +65,22 @@ def _carbon_figure(results: ResultsFolder, figures: Figures) -> Figure:
     )
     return figures.add(
         draw_carbon_years(years, carbon["stops_year"]),
-        title="The cleaner the grid, the less is saved",
+        title=_years_title(years),
         see="What to see: the plant’s own CO₂ stays, that of the grid power it replaces falls."
         + level,
         alt="CO2 saved by year in tonnes: "
         + "; ".join(f"{y['calendar_year']}: {number(y['saved_t'])}" for y in years),
     )
+
+
+def _years_title(years: list[Facts]) -> str:
+    """What the bars of all years show."""
+    saving = sum(year["saved_t"] > 0.0 for year in years)
+    if not saving:
+        return "Against this grid it saves in no year"
+    if saving == len(years):
+        return "It saves in every year"
+    return "The cleaner the grid, the less is saved"
 
 
 def _carbon_facts(carbon: Facts) -> list[tuple[str, str]]:
@@ -90,7 +100,7 @@ def _carbon_facts(carbon: Facts) -> list[tuple[str, str]]:
             (
                 f"{carbon['basis']} factors, {number(years[0]['grid_kg_per_kWh'], 3)} kg/kWh in "
                 f"{years[0]['calendar_year']}, {number(years[-1]['grid_kg_per_kWh'], 3)} in "
-                f"{years[-1]['calendar_year']}; {real_subscripts(carbon['source'])}"
+                f"{years[-1]['calendar_year']}; {printed(carbon['source'])}"
             ),
         ),
         (

@@ -5,7 +5,7 @@ from typing import Any
 from reports.figures import Figures
 from reports.numbers import count
 from reports.results_folder import ResultsFolder
-from reports.wording import real_subscripts, upper_first
+from reports.wording import printed, upper_first
 
 SEVERITIES = ("serious", "attention", "note")
 STAGES = {
@@ -29,15 +29,14 @@ def findings(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
                 "severity": f["severity"],
                 "stage": STAGES[f["stage"]],
                 "where": f["where"],
-                "what": upper_first(real_subscripts(f["what"])),
-                "effect": real_subscripts(f["effect"]),
-                "advice": real_subscripts(f["advice"]),
+                "what": upper_first(printed(f["what"])),
+                "effect": printed(f["effect"]),
+                "advice": printed(f["advice"]),
             }
             for f in found
         ],
         "defaults": [
-            (d["path"], d["value"], real_subscripts(d["meaning"]))
-            for d in results.facts["defaults"]
+            (d["path"], d["value"], printed(d["meaning"])) for d in results.facts["defaults"]
         ],
     }
 

@@ -28,7 +28,7 @@ def machine(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
         "model": _model(record),
         "stations": [
             (
-                station["station"],
+                upper_first(station["station"]),
                 number(station["temperature_degC"]),
                 number(station["pressure_kPa"]),
                 number(station["flow_kg_per_s"], 2),
@@ -77,7 +77,7 @@ def _model(record: Facts) -> list[tuple[str, str]]:
 def _point(point: Facts) -> tuple[str, list[str]]:
     """The machine in one condition."""
     return (
-        point["label"],
+        upper_first(point["label"]),
         [
             number(point["ambient_degC"]),
             percent(point["load_frac"]),

@@ -5,7 +5,7 @@ from typing import Any
 from reports.figures import Figures
 from reports.numbers import money, number, percent, signed_percent, small_percent, unit_price
 from reports.results_folder import ResultsFolder
-from reports.wording import has_store, real_subscripts
+from reports.wording import has_store, printed
 
 
 def method(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
@@ -19,8 +19,8 @@ def method(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
         "price_year": heading["price_year"],
         "first_year": heading["first_operating_year"],
         "step": f"{results.step_h:g}",
-        "power_lines": [real_subscripts(line) for line in tariffs["power_lines"]],
-        "gas_lines": [real_subscripts(line) for line in tariffs["gas_lines"]],
+        "power_lines": [printed(line) for line in tariffs["power_lines"]],
+        "gas_lines": [printed(line) for line in tariffs["gas_lines"]],
         "gas": f"{tariffs['fuel_name']}, LHV {number(tariffs['lhv_MJ_per_kg'], 2)} MJ/kg, "
         f"HHV/LHV {number(tariffs['hhv_over_lhv'], 4)}; all in "
         f"{unit_price(tariffs['all_in_gas_per_lhv_kWh'], currency)} (LHV) on average, "
@@ -31,9 +31,11 @@ def method(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
                 money(p["cost_per_year"], currency),
                 money(p["lower_bound_per_year"], currency),
                 small_percent(p["gap_frac"]),
-                p["path"],
             )
             for name, p in (("Today", today), (option["name"], proof))
+        ],
+        "paths": [
+            f"{name}: {p['path']}." for name, p in (("Today", today), (option["name"], proof))
         ],
         "fit": f"fuel {signed_percent(proof['fit_fuel_frac'], 2)}, heat "
         f"{signed_percent(proof['fit_heat_frac'], 2)}, "

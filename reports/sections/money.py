@@ -7,7 +7,7 @@ from reports.figures import Figures
 from reports.numbers import money as amount
 from reports.numbers import money_scale, number, percent
 from reports.results_folder import Facts, ResultsFolder
-from reports.wording import capital_line, real_subscripts
+from reports.wording import capital_line, printed
 
 COLUMNS = (
     "capital",
@@ -58,9 +58,7 @@ def money(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
 def _capital(capital: Facts, currency: str) -> dict[str, Any]:
     """Capital by line, and what it avoids."""
     total = capital["total"]
-    avoided = [
-        (real_subscripts(line["line"]), number(-line["cost"])) for line in capital["avoided"]
-    ]
+    avoided = [(printed(line["line"]), number(-line["cost"])) for line in capital["avoided"]]
     return {
         "lines": [
             (

@@ -8,7 +8,7 @@ from reports.figures import Figures
 from reports.numbers import money, number, percent, signed_percent, significant, unit_price, years
 from reports.results_folder import Facts, ResultsFolder
 from reports.sections.tornado import outcome_figure
-from reports.wording import real_subscripts, with_article
+from reports.wording import printed, with_article
 
 
 def options(results: ResultsFolder, figures: Figures) -> dict[str, Any]:
@@ -93,7 +93,7 @@ def _rejected(results: ResultsFolder, option: Facts, figures: Figures) -> dict[s
     bad = None if combined is None else combined["npv_real"]
     return {
         "name": option["name"],
-        "description": real_subscripts(option["description"]),
+        "description": printed(option["description"]),
         "why": _why(results, option),
         "figure": None if option is results.subject else outcome_figure(results, option, figures),
         "facts": [

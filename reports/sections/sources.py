@@ -23,9 +23,14 @@ def sources(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
             (file["file"], number(file["bytes"]), _in_groups(file["sha256"]))
             for file in results.facts["inputs"]
         ],
-        "version": results.facts["flueprint_version"],
+        "version": _version(str(results.facts["flueprint_version"])),
         "made": str(results.facts["made_at_utc"])[:16].replace("T", " "),
     }
+
+
+def _version(version: str) -> str:
+    """A version's number, or that there is none."""
+    return version if version[:1].isdigit() else f"({version})"
 
 
 def _in_groups(digest: str) -> str:
