@@ -100,7 +100,7 @@ def test_a_time_limit_leaves_a_schedule_and_an_honest_gap(
     assert 1e-7 < schedule.gap_frac < 0.1
 
 
-@pytest.mark.slow
+@pytest.mark.long
 def test_months_in_processes_give_the_same_year(monkeypatch: pytest.MonkeyPatch) -> None:
     """Two processes or one: the same bound and cost, and progress never goes back."""
     monkeypatch.setattr(solve, "why_unknown", lambda _: "this test's months")
