@@ -83,7 +83,7 @@ def test_bill_of_a_solved_year(with_unit: bool) -> None:
         prices(study, year, RoundGas()),
         year.hourly,
         gap_frac=0.05,
-        certified=False,
+        duals=False,
     )
     billed = bill(
         study,
