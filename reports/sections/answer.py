@@ -107,7 +107,7 @@ def _keys(results: ResultsFolder) -> list[tuple[str, str, str]]:
     option, life = results.subject, results.heading["life_years"]
     economics, currency = option["economics"], results.currency
     capital = economics["capital"]
-    share = economics["saving_share_of_bill_frac"]
+    share, avoids = economics["saving_share_of_bill_frac"], bool(capital["avoided"])
     saving, saving_unit = money_parts(economics["annual_saving"], currency)
     cost, cost_unit = money_parts(capital["total"], currency)
     saved = "saved a year" if economics["annual_saving"] >= 0 else "saved a year: it costs more"
@@ -117,8 +117,8 @@ def _keys(results: ResultsFolder) -> list[tuple[str, str, str]]:
             cost,
             cost_unit,
             (
-                f"capital, {capital['accuracy_class']} (±{percent(capital['accuracy_frac'])}); "
-                f"{money(capital['net'], currency)} net of what it avoids"
+                f"capital, {capital['accuracy_class']} (±{percent(capital['accuracy_frac'])})"
+                + (f"; {money(capital['net'], currency)} net of what it avoids" if avoids else "")
             ),
         ),
         _payback_key(economics, life),

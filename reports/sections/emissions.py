@@ -191,7 +191,9 @@ def _efficiency(efficiency: Facts) -> list[tuple[str, str, str]]:
             _asked(saving),
         ),
         (
-            TESTS.get(efficiency["test"], str(efficiency["test"])),
+            "Legal test"
+            if efficiency["met"] is None
+            else TESTS.get(efficiency["test"], str(efficiency["test"])),
             VERDICTS[efficiency["met"]],
             NOTHING,
         ),

@@ -1,11 +1,16 @@
 """Findings and defaults: what a reader must know about inputs and answer."""
 
+import re
 from typing import Any
 
 from reports.figures import Figures
 from reports.numbers import count
-from reports.results_folder import ResultsFolder
+from reports.results_folder import Facts, ResultsFolder
 from reports.wording import printed, upper_first
+
+#: Place of a record in a list, inside a field's path, and what stands for several.
+INDEX = re.compile(r"\[(\d+)\]")
+NUMBERED = "[#]"
 
 SEVERITIES = ("serious", "attention", "note")
 STAGES = {
@@ -35,10 +40,22 @@ def findings(results: ResultsFolder, _figures: Figures) -> dict[str, Any]:
             }
             for f in found
         ],
-        "defaults": [
-            (d["path"], d["value"], printed(d["meaning"])) for d in results.facts["defaults"]
-        ],
+        "defaults": _defaults(results.facts["defaults"]),
     }
+
+
+def _defaults(defaults: list[Facts]) -> list[tuple[str, str, str]]:
+    """Each default once: the same field of several records of a list shares a line."""
+    places: dict[tuple[str, str, str], list[str]] = {}
+    for default in defaults:
+        field = INDEX.sub(NUMBERED, default["path"])
+        found = INDEX.findall(default["path"])
+        shared = (field if len(found) == 1 else default["path"], default["value"])
+        places.setdefault((*shared, default["meaning"]), []).extend(found)
+    return [
+        (field.replace(NUMBERED, f"[{', '.join(found)}]"), value, printed(meaning))
+        for (field, value, meaning), found in places.items()
+    ]
 
 
 def _title(total: int, serious: int) -> str:

@@ -7,7 +7,7 @@ from reports.figures import Figures
 from reports.numbers import money as amount
 from reports.numbers import money_scale, number, percent
 from reports.results_folder import Facts, ResultsFolder
-from reports.wording import capital_line, printed
+from reports.wording import capital_line, printed, upper_first
 
 COLUMNS = (
     "capital",
@@ -71,9 +71,12 @@ def _capital(capital: Facts, currency: str) -> dict[str, Any]:
         "total": number(total),
         "avoided": avoided,
         "net": number(capital["net"]),
-        "note": f"{capital['accuracy_class']}, ±{percent(capital['accuracy_frac'])}; what is "
-        "avoided "
-        f"is worth {amount(capital['avoided_present_value'], currency)} today.",
+        "note": f"{upper_first(capital['accuracy_class'])}, ±{percent(capital['accuracy_frac'])}."
+        + (
+            f" What is avoided is worth {amount(capital['avoided_present_value'], currency)} today."
+            if avoided
+            else ""
+        ),
     }
 
 

@@ -36,6 +36,8 @@ def _title(ordered: list[Facts]) -> str:
         return f"{none} earns its capital back"
     if paying == len(ordered):
         return "Both options pay" if len(ordered) == 2 else f"All {len(ordered)} options pay"  # noqa: PLR2004 - both
+    if len(ordered) == 2:  # noqa: PLR2004 - one pays and one does not
+        return "One option pays, the other does not"
     return f"{paying} of {len(ordered)} options {'pays' if paying == 1 else 'pay'}"
 
 

@@ -95,4 +95,5 @@ def _title(bars: list[Bar], planned: float) -> str:
     ]
     if not turned:
         return f"No single step can {verb} the case"
-    return f"{upper_first(listed(turned))} alone can {verb} the case"
+    each = "each alone" if len(turned) > 1 else "alone"
+    return f"{upper_first(listed(turned))} {each} can {verb} the case"

@@ -211,3 +211,20 @@ def test_factory_that_should_not_build(factory_folder: Path, tmp_path: Path) -> 
     assert "The yearly bill falls" in pages[1]
     assert "Neither option earns its capital back" in pages[2]
     assert "Drying heat" in pages[4]
+
+
+def test_one_default_of_several_records_takes_one_line(usual: ResultsFolder) -> None:
+    """The same field left out in two options is told once, with both places."""
+
+    def twice(facts: Facts) -> None:
+        same = {"value": "8.0", "meaning": "Approach of the drum."}
+        facts["defaults"] = [
+            {"path": "option[1].recovery.approach_K", **same},
+            {"path": "option[2].recovery.approach_K", **same},
+            {"path": "option[2].recovery.pinch_K", "value": "10.0", "meaning": "Pinch."},
+        ]
+
+    text = _text(_changed(usual, twice))
+
+    assert "option[1, 2].recovery.approach_K 8.0 Approach of the drum." in text
+    assert "option[2].recovery.pinch_K 10.0 Pinch." in text
