@@ -1,9 +1,14 @@
 """The answer on one screen of a terminal."""
 
+import textwrap
+
 from planner.results.records import OptionOutcome, Results
 
 #: Findings shown in full; the report has them all.
 SHOWN_FINDINGS = 6
+
+#: Width of a terminal that everybody has.
+WIDTH = 100
 
 SEVERITY_ORDER = ("serious", "attention", "note")
 
@@ -22,12 +27,13 @@ def one_screen(results: Results) -> str:
         Lines of at most 100 characters.
     """
     heading = results.heading
-    lines = [f"{heading.site}, {heading.place}: {_verdict(results)}", ""]
+    headline = f"{heading.site}, {heading.place}: {_verdict(results)}"
+    lines = [*textwrap.wrap(headline, WIDTH), ""]
     ordered = sorted(results.options, key=lambda o: o.key != results.verdict.best)
     for option in ordered:
         lines += [option.name, *_option_lines(option, results), ""]
     lines += _finding_lines(results)
-    return "\n".join(lines)
+    return "\n".join(_cut(line.rstrip()) for line in lines)
 
 
 def _verdict(results: Results) -> str:
@@ -70,7 +76,7 @@ def _option_lines(option: OptionOutcome, results: Results) -> list[str]:
 
 def _pair(label: str, value: str) -> str:
     """A label and its value, half a line wide."""
-    return f"  {label:<24}{value:<24}"
+    return f"  {label:<24}{value:<23} "
 
 
 def _finding_lines(results: Results) -> list[str]:
@@ -81,4 +87,9 @@ def _finding_lines(results: Results) -> list[str]:
     lines += [f"  {f.severity}: {f.where}: {f.what}" for f in shown]
     if len(ordered) > len(shown):
         lines.append(f"  and {len(ordered) - len(shown)} more, all in the report")
-    return [line if len(line) <= 100 else line[:99] + "…" for line in lines]  # noqa: PLR2004 - a screen
+    return lines
+
+
+def _cut(line: str) -> str:
+    """A line that fits the screen."""
+    return line if len(line) <= WIDTH else line[: WIDTH - 1] + "…"

@@ -18,7 +18,6 @@ pytestmark = [
     pytest.mark.slow,
     pytest.mark.solver,
     pytest.mark.pdf,
-    pytest.mark.xdist_group("demo"),
 ]
 
 SITES = ("hospital", "factory")

@@ -13,7 +13,7 @@ import pytest
 from planner import cli
 from planner.study.starter import write_starter
 
-pytestmark = [pytest.mark.slow, pytest.mark.solver, pytest.mark.xdist_group("five lines")]
+pytestmark = [pytest.mark.slow, pytest.mark.solver]
 
 REPO = Path(__file__).parents[2]
 
