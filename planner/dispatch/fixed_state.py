@@ -6,10 +6,11 @@ import numpy as np
 
 from planner.arrays import BoolArray, FloatArray, IntArray
 from planner.dispatch.commitment import starts_of
-from planner.dispatch.program import Answer
+from planner.dispatch.places import WindowProgram
 from planner.dispatch.segment_order import SegmentOrder, mended_order, no_order
+from planner.dispatch.solver import Answer
 from planner.dispatch.window import Window
-from planner.dispatch.year_program import WindowProgram, build
+from planner.dispatch.year_program import build
 from planner.errors import SolveError
 
 #: Laying down the order of segments in some steps may break it in others; it settles in a few.

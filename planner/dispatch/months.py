@@ -17,7 +17,7 @@ from loky import ProcessPoolExecutor
 from planner.arrays import BoolArray, FloatArray, IntArray
 from planner.dispatch.commitment import mended
 from planner.dispatch.hull_program import HullProgram, build_hull
-from planner.dispatch.program import NO_ANSWER, Answer
+from planner.dispatch.solver import NO_ANSWER, Answer
 from planner.dispatch.window import Window, part_of
 from planner.errors import SolveError
 

@@ -5,58 +5,14 @@ columns or rows is one call with arrays, so that a month is put together in mill
 problem written row by row for the reader is in `record`.
 """
 
-from dataclasses import dataclass
-
 import highspy
 import numpy as np
 from scipy import sparse
 
 from planner.arrays import BoolArray, FloatArray, IntArray
-from planner.dispatch.hush import hush_banner
-from planner.errors import SolveError
-
-#: HiGHS counts bounds beyond this as infinite.
-INFINITY = highspy.kHighsInf
+from planner.dispatch.solver import INFINITY, NO_ANSWER, Answer, run_linear, run_whole
 
 Term = tuple[FloatArray | float, IntArray]
-
-#: A linear programme has no schedule to give before it ends, so its limit only catches a hang.
-LINEAR_LIMIT_S = 900.0
-
-
-class InfeasibleError(SolveError):
-    """No values of the columns keep all rows."""
-
-
-@dataclass(frozen=True)
-class Answer:
-    """What HiGHS found.
-
-    Parameters
-    ----------
-    column_values : array, shape (columns,)
-        Best solution; empty where time ended before there was one.
-    objective : float [currency]
-        Its cost, offset included; infinite where there is none.
-    bound : float [currency]
-        Proven lower bound on the cost.
-    row_duals : array, shape (rows,)
-        Marginal cost of each row's right-hand side; all zero where integers were decided.
-    """
-
-    column_values: FloatArray
-    objective: float
-    bound: float
-    row_duals: FloatArray
-
-    @property
-    def found(self) -> bool:
-        """Whether there is a solution."""
-        return self.column_values.size > 0
-
-
-#: What there is before anything was found.
-NO_ANSWER = Answer(np.zeros(0), INFINITY, -INFINITY, np.zeros(0))
 
 
 class Program:
@@ -190,10 +146,8 @@ class Program:
         SolveError
             If HiGHS fails.
         """
-        whole = np.concatenate(self._whole)
-        solver = _quiet_solver(gap_frac, time_limit_s)
-        _run(solver, self._model(whole=whole, fixed=None), first)
-        return _whole_answer(solver)
+        model = self._model(whole=np.concatenate(self._whole), fixed=None)
+        return run_whole(model, gap_frac=gap_frac, time_limit_s=time_limit_s, first=first)
 
     def solve_relaxed(self, *, fixed: tuple[IntArray, FloatArray] | None = None) -> Answer:
         """Solve as a linear programme: no column need be whole.
@@ -215,10 +169,7 @@ class Program:
         SolveError
             If HiGHS fails.
         """
-        whole = np.zeros(self.columns, dtype=bool)
-        solver = _quiet_solver(0.0, LINEAR_LIMIT_S)
-        _run(solver, self._model(whole=whole, fixed=fixed))
-        return _linear_answer(solver)
+        return run_linear(self._model(whole=np.zeros(self.columns, dtype=bool), fixed=fixed))
 
     def _model(
         self, *, whole: BoolArray, fixed: tuple[IntArray, FloatArray] | None
@@ -248,83 +199,3 @@ class Program:
             kinds = (highspy.HighsVarType.kContinuous, highspy.HighsVarType.kInteger)
             model.integrality_ = [kinds[int(is_whole)] for is_whole in whole]
         return model
-
-
-def _quiet_solver(gap_frac: float, time_limit_s: float) -> highspy.Highs:
-    """HiGHS with the settings under which the same input gives the same answer."""
-    hush_banner()
-    solver = highspy.Highs()
-    for name, value in (
-        ("output_flag", False),
-        ("threads", 1),
-        ("random_seed", 0),
-        ("mip_rel_gap", gap_frac),
-        ("time_limit", time_limit_s),
-    ):
-        solver.setOptionValue(name, value)
-    return solver
-
-
-def _run(solver: highspy.Highs, model: highspy.HighsLp, first: Answer = NO_ANSWER) -> None:
-    """Load and run, or say that HiGHS failed."""
-    if solver.passModel(model) == highspy.HighsStatus.kError:
-        raise SolveError("HiGHS refused the model")
-    if first.found:
-        begun = highspy.HighsSolution()
-        begun.col_value = first.column_values
-        solver.setSolution(begun)
-    if solver.run() == highspy.HighsStatus.kError:
-        # Where something else in this process used another number of threads, HiGHS does not start
-        # until its scheduler is made anew.
-        highspy.Highs.resetGlobalScheduler(True)
-        if solver.run() == highspy.HighsStatus.kError:
-            raise SolveError("HiGHS failed while solving")
-
-
-def _linear_answer(solver: highspy.Highs) -> Answer:
-    """The optimum of a linear programme; anything less is an error."""
-    _refuse_status(solver, {highspy.HighsModelStatus.kOptimal})
-    solution = solver.getSolution()
-    objective = float(solver.getInfo().objective_function_value)
-    return Answer(
-        column_values=np.asarray(solution.col_value),
-        objective=objective,
-        bound=objective,
-        row_duals=np.asarray(solution.row_dual),
-    )
-
-
-def _whole_answer(solver: highspy.Highs) -> Answer:
-    """Best solution and HiGHS's own bound, whatever it calls its end."""
-    _refuse_status(
-        solver,
-        {
-            highspy.HighsModelStatus.kOptimal,
-            highspy.HighsModelStatus.kTimeLimit,
-            highspy.HighsModelStatus.kSolutionLimit,
-        },
-    )
-    info = solver.getInfo()
-    feasible = info.primal_solution_status == highspy.kSolutionStatusFeasible
-    values = np.asarray(solver.getSolution().col_value) if feasible else np.zeros(0)
-    return Answer(
-        column_values=values,
-        objective=float(info.objective_function_value) if feasible else INFINITY,
-        bound=float(info.mip_dual_bound),
-        row_duals=np.zeros(0),
-    )
-
-
-def _refuse_status(solver: highspy.Highs, usable: set[highspy.HighsModelStatus]) -> None:
-    """Raise unless HiGHS ended in a way that can be used."""
-    status = solver.getModelStatus()
-    if status in usable:
-        return
-    said = solver.modelStatusToString(status)
-    impossible = {
-        highspy.HighsModelStatus.kInfeasible,
-        highspy.HighsModelStatus.kUnboundedOrInfeasible,
-    }
-    if status in impossible:
-        raise InfeasibleError(f"HiGHS ended with «{said}»")
-    raise SolveError(f"HiGHS ended with «{said}»")

@@ -6,9 +6,10 @@ import pandas as pd
 from planner.arrays import FloatArray
 from planner.dispatch.commitment import starts_of
 from planner.dispatch.fixed_state import FixedYear
-from planner.dispatch.program import Answer
+from planner.dispatch.places import Columns, WindowProgram
+from planner.dispatch.solver import Answer
 from planner.dispatch.window import Window
-from planner.dispatch.year_program import GRADES, Columns, WindowProgram
+from planner.dispatch.year_program import GRADES
 
 #: Columns of the exhaust's shares by path name.
 SHARE_COLUMNS = {

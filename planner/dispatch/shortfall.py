@@ -12,9 +12,10 @@ import pandas as pd
 
 from load_profiles import Fault
 from planner.arrays import FloatArray
-from planner.dispatch.program import Answer
+from planner.dispatch.places import WindowProgram
+from planner.dispatch.solver import Answer
 from planner.dispatch.window import Window, power_without_chillers_kW
-from planner.dispatch.year_program import WindowProgram, build
+from planner.dispatch.year_program import build
 from planner.errors import UnmetDemandError
 from planner.market.prices import Prices
 from planner.plant.envelope import OperatingEnvelope

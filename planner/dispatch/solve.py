@@ -18,11 +18,11 @@ from planner.dispatch.fast_shape import why_unknown
 from planner.dispatch.fast_year import solve_window
 from planner.dispatch.fixed_state import FixedYear, solve_fixed
 from planner.dispatch.months import borders, solve_months
-from planner.dispatch.program import InfeasibleError
 from planner.dispatch.read_back import hourly_flows
 from planner.dispatch.record import certify
 from planner.dispatch.schedule import Schedule
 from planner.dispatch.shortfall import locate_shortfall, refuse_unmet_demand
+from planner.dispatch.solver import InfeasibleError
 from planner.dispatch.window import Window, whole_year
 from planner.dispatch.year_program import build
 from planner.errors import SolveError
