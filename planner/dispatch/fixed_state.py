@@ -46,6 +46,12 @@ class FixedYear:
         """Cost of the year [currency]."""
         return self.answer.objective
 
+    @property
+    def levels_kWh(self) -> FloatArray | None:
+        """Level of the store at the end of each step; None without a store."""
+        places = self.built.columns.level
+        return None if places is None else self.answer.column_values[places]
+
     def level_values(self, cuts: IntArray) -> FloatArray:
         """Value of stored heat at borders of the year.
 

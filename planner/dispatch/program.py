@@ -10,7 +10,8 @@ import numpy as np
 from scipy import sparse
 
 from planner.arrays import BoolArray, FloatArray, IntArray
-from planner.dispatch.solver import INFINITY, NO_ANSWER, Answer, run_linear, run_whole
+from planner.dispatch.apart import LinearArrays, solve_apart
+from planner.dispatch.solver import INFINITY, NO_ANSWER, Answer, run_whole
 
 Term = tuple[FloatArray | float, IntArray]
 
@@ -146,7 +147,7 @@ class Program:
         SolveError
             If HiGHS fails.
         """
-        model = self._model(whole=np.concatenate(self._whole), fixed=None)
+        model = self._model(np.concatenate(self._whole))
         return run_whole(model, gap_frac=gap_frac, time_limit_s=time_limit_s, first=first)
 
     def solve_relaxed(self, *, fixed: tuple[IntArray, FloatArray] | None = None) -> Answer:
@@ -169,33 +170,31 @@ class Program:
         SolveError
             If HiGHS fails.
         """
-        return run_linear(self._model(whole=np.zeros(self.columns, dtype=bool), fixed=fixed))
+        return solve_apart(self._arrays(fixed))
 
-    def _model(
-        self, *, whole: BoolArray, fixed: tuple[IntArray, FloatArray] | None
-    ) -> highspy.HighsLp:
-        """The programme in HiGHS's own form."""
+    def _arrays(self, fixed: tuple[IntArray, FloatArray] | None) -> LinearArrays:
+        """The programme as arrays, some columns fixed."""
         low, high = np.concatenate(self._low), np.concatenate(self._high)
         if fixed is not None:
             fixed_columns, values = fixed
             low[fixed_columns] = high[fixed_columns] = values
         rows, columns, factors = (np.concatenate(part) for part in zip(*self._entries, strict=True))
-        matrix = sparse.csc_matrix((factors, (rows, columns)), shape=(self.rows, self.columns))
-        model = highspy.HighsLp()
-        model.num_col_, model.num_row_ = self.columns, self.rows
         cost = np.concatenate(self._cost)
-        for columns, further in self._further_cost:
-            cost[columns] += further
-        model.col_cost_ = cost
-        model.col_lower_, model.col_upper_ = low, high
-        model.row_lower_ = np.concatenate(self._row_low)
-        model.row_upper_ = np.concatenate(self._row_high)
-        model.offset_ = self.offset
-        model.a_matrix_.format_ = highspy.MatrixFormat.kColwise
-        model.a_matrix_.start_ = matrix.indptr
-        model.a_matrix_.index_ = matrix.indices
-        model.a_matrix_.value_ = matrix.data
-        if whole.any():
-            kinds = (highspy.HighsVarType.kContinuous, highspy.HighsVarType.kInteger)
-            model.integrality_ = [kinds[int(is_whole)] for is_whole in whole]
+        for dearer, further in self._further_cost:
+            cost[dearer] += further
+        return LinearArrays(
+            cost=cost,
+            low=low,
+            high=high,
+            row_low=np.concatenate(self._row_low),
+            row_high=np.concatenate(self._row_high),
+            matrix=sparse.csc_matrix((factors, (rows, columns)), shape=(self.rows, self.columns)),
+            offset=self.offset,
+        )
+
+    def _model(self, whole: BoolArray) -> highspy.HighsLp:
+        """The programme in HiGHS's own form, with whole numbers."""
+        model = self._arrays(None).model()
+        kinds = (highspy.HighsVarType.kContinuous, highspy.HighsVarType.kInteger)
+        model.integrality_ = [kinds[int(is_whole)] for is_whole in whole]
         return model

@@ -8,6 +8,7 @@ both lines of PuLP, 3.3 and 4; what HiGHS itself says is read, not PuLP's word f
 import gc
 from collections.abc import Iterator
 from contextlib import contextmanager
+from itertools import pairwise
 from typing import Any
 
 import highspy
@@ -15,11 +16,13 @@ import numpy as np
 import pulp
 
 from planner.arrays import BoolArray
+from planner.dispatch.commitment import starts_of
 from planner.dispatch.fixed_state import FixedYear
+from planner.dispatch.months import borders
 from planner.dispatch.record_rows import always
 from planner.dispatch.record_unit import RecordedUnit
 from planner.dispatch.segment_order import SegmentOrder
-from planner.dispatch.window import Window
+from planner.dispatch.window import Window, part_of
 from planner.dispatch.year_program import GRADES
 from planner.errors import SolveError
 
@@ -28,7 +31,10 @@ AGREEMENT_FRAC = 1e-6
 
 
 def certify(year: FixedYear) -> None:
-    """Hold a year's cost against the model of record.
+    """Hold a year's cost against the model of record, billing month by billing month.
+
+    The months are handed the store's level at their borders, so that they add up to the year; a
+    whole year in PuLP at once takes a gigabyte.
 
     Parameters
     ----------
@@ -40,11 +46,38 @@ def certify(year: FixedYear) -> None:
     SolveError
         If the model of record does not find the same cost.
     """
-    recorded = DispatchModel(year.window, on=year.on, order=year.order).solve()
+    recorded = sum(_recorded_pieces(year))
     if not abs(recorded - year.cost) <= AGREEMENT_FRAC * abs(year.cost):
         raise SolveError(
             f"the model of record finds {recorded:.2f} where the schedule has {year.cost:.2f}"
         )
+
+
+def _recorded_pieces(year: FixedYear) -> Iterator[float]:
+    """Cost of each piece of the year by the model of record, starts at its border included."""
+    window, unit, starts = year.window, year.window.unit, starts_of(year.on)
+    levels = year.levels_kWh
+    for first, after in pairwise(_certified_cuts(window)):
+        steps = slice(first, after)
+        order = year.order
+        if order is not None:
+            order = SegmentOrder(order.full[steps], order.empty[steps])
+        ends = None if levels is None else (float(levels[first - 1]), float(levels[after - 1]))
+        piece = part_of(window, first, after - first)
+        yield DispatchModel(piece, on=year.on[steps], order=order, levels_kWh=ends).solve()
+        if unit is not None and starts[first]:
+            fuel = float(window.fuel_per_lhv_kWh[first]) * unit.start_fuel_lhv_kWh
+            yield unit.cost_per_start + fuel
+
+
+def _certified_cuts(window: Window) -> list[int]:
+    """Borders of the pieces; the whole year where a billing month comes in two of them."""
+    cuts = [int(cut) for cut in borders(window)]
+    for charge in window.prices.demand_charges:
+        present = [np.unique(charge.period[a:b]) for a, b in pairwise(cuts)]
+        if len(np.unique(np.concatenate(present))) < sum(len(periods) for periods in present):
+            return [0, window.steps]
+    return cuts
 
 
 class DispatchModel(RecordedUnit):
@@ -58,12 +91,21 @@ class DispatchModel(RecordedUnit):
         The unit's state, to be fixed; left out, the model decides.
     order : SegmentOrder, optional
         Segments that must be full, or empty.
+    levels_kWh : tuple of float, optional [kWh]
+        Level of the store before the first step and after the last; left out, the store ends at
+        the level at which it began.
     """
 
     def __init__(
-        self, window: Window, *, on: BoolArray | None = None, order: SegmentOrder | None = None
+        self,
+        window: Window,
+        *,
+        on: BoolArray | None = None,
+        order: SegmentOrder | None = None,
+        levels_kWh: tuple[float, float] | None = None,
     ) -> None:
         super().__init__(window)
+        self.levels_kWh = levels_kWh
         with _without_collector():
             self._grid()
             if window.unit is not None:
@@ -145,7 +187,7 @@ class DispatchModel(RecordedUnit):
         ]
 
     def _store(self) -> None:
-        """The level follows charge, discharge and loss, and ends where it began."""
+        """The level follows charge, discharge and loss, between the levels at its ends."""
         store = self.window.store
         if store is None:
             return
@@ -154,11 +196,15 @@ class DispatchModel(RecordedUnit):
         self.level = self._variables("level", always(store.capacity_kWh))
         step_h = self.window.step_h
         kept = 1.0 - store.loss_frac_per_h * step_h
+        before = [self.level[-1], *self.level[:-1]]
+        if self.levels_kWh is not None:
+            before[0], last_kWh = self.levels_kWh
+            self._require("store_last_level", [self.level[-1] == last_kWh])
         self._require(
             "store_balance",
             (
                 self.level[h]
-                == kept * self.level[h - 1] + step_h * self.charge[h] - step_h * self.discharge[h]
+                == kept * before[h] + step_h * self.charge[h] - step_h * self.discharge[h]
                 for h in self.hours
             ),
         )
