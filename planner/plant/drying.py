@@ -4,8 +4,8 @@ import numpy as np
 
 from planner.arrays import FloatArray
 from planner.constants import ZERO_CELSIUS_K
+from planner.plant.exchange import GasFlow
 from planner.plant.gas import Mixture
-from planner.plant.recovery import GasFlow
 from planner.study.sections import GasSystem
 
 

@@ -4,16 +4,10 @@ from dataclasses import dataclass
 
 from planner.arrays import FloatArray
 from planner.plant.drying import drying_heat_kW
-from planner.plant.recovery import (
-    GasFlow,
-    SteamBoiler,
-    WaterHeater,
-    design_steam_boiler,
-    design_water_heater,
-    run_steam_boiler,
-    run_water_heater,
-)
+from planner.plant.exchange import GasFlow
 from planner.plant.running import Ambient, RunningPoint
+from planner.plant.steam_boiler import SteamBoiler, design_steam_boiler, run_steam_boiler
+from planner.plant.water_heater import WaterHeater, design_water_heater, run_water_heater
 from planner.study.sections import Heat, Recovery
 
 HOT_GAS, STEAM_THEN_WATER, WATER_ONLY, BYPASS = (

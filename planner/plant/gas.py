@@ -12,18 +12,11 @@ import numpy as np
 from planner.arrays import FloatArray
 from planner.constants import GAS_CONSTANT_J_per_molK
 from planner.data.published import published_rows
-from planner.plant.fuel import GasFuel
 
 SPECIES = ("nitrogen", "oxygen", "argon", "carbon_dioxide", "water")
 
 #: Temperature at which the polynomials change over.
 CHANGEOVER_K = 1000.0
-
-#: Dry air by volume, CO2 of today left at the standard's value: ISO 2533 rounded.
-DRY_AIR_mol_frac = (0.78084, 0.20946, 0.00934, 0.00036, 0.0)
-
-#: Below this humidity of saturation nothing is left out: steam never fills more than half the air.
-MOST_WATER_mol_frac = 0.5
 
 
 @cache
@@ -40,7 +33,13 @@ def _coefficients() -> tuple[FloatArray, FloatArray, FloatArray]:
 
 
 def molar_masses_kg_per_kmol() -> FloatArray:
-    """Molar masses of `SPECIES`."""
+    """Molar masses of `SPECIES`.
+
+    Returns
+    -------
+    array, shape (species,) [kg/kmol]
+        As the polynomials' source has them.
+    """
     return _coefficients()[0]
 
 
@@ -202,131 +201,3 @@ def species_enthalpies_kJ_per_kg(temperature_K: FloatArray) -> FloatArray:
 NEWTON_STEPS = 12
 NEWTON_TOLERANCE_K = 1e-9
 TEMPERATURE_RANGE_K = (180.0, 3200.0)
-
-
-def saturation_pressure_kPa(temperature_K: FloatArray) -> FloatArray:
-    """Vapour pressure over water, and over ice below 0.01 degC.
-
-    Parameters
-    ----------
-    temperature_K : array [K]
-        From 190 K to the critical point.
-
-    Returns
-    -------
-    array [kPa]
-        Saturation pressure.
-
-    References
-    ----------
-    Over water Wagner and Pruss (1993), equation 1; over ice Murphy and Koop (2005), equation 7.
-
-    Examples
-    --------
-    >>> print(f"{saturation_pressure_kPa(np.array([288.15]))[0]:.4f}")
-    1.7058
-    """
-    t = np.asarray(temperature_K, dtype=np.float64)
-    tau = np.maximum(1.0 - t / 647.096, 1e-12)
-    series = (
-        -7.85951783 * tau
-        + 1.84408259 * tau**1.5
-        - 11.7866497 * tau**3
-        + 22.6807411 * tau**3.5
-        - 15.9618719 * tau**4
-        + 1.80122502 * tau**7.5
-    )
-    over_water_kPa = 22064.0 * np.exp(647.096 / t * series)
-    over_ice_Pa = np.exp(9.550426 - 5723.265 / t + 3.53068 * np.log(t) - 0.00728332 * t)
-    return np.where(t < 273.16, over_ice_Pa * 1e-3, over_water_kPa)  # noqa: PLR2004 - triple point
-
-
-def humid_air(
-    temperature_K: FloatArray, pressure_kPa: FloatArray, relative_humidity_frac: FloatArray
-) -> Mixture:
-    """Air of a stated humidity.
-
-    Parameters
-    ----------
-    temperature_K, pressure_kPa, relative_humidity_frac : array, shape (hours,)
-        State of the air.
-
-    Returns
-    -------
-    Mixture
-        Dry air of the standard composition and water vapour.
-    """
-    share = relative_humidity_frac * saturation_pressure_kPa(temperature_K) / pressure_kPa
-    water = np.clip(share, 0.0, MOST_WATER_mol_frac)
-    dry = np.array(DRY_AIR_mol_frac) / sum(DRY_AIR_mol_frac)
-    moles = (1.0 - water)[:, None] * dry
-    moles[:, SPECIES.index("water")] += water
-    masses = moles * molar_masses_kg_per_kmol()
-    return Mixture(masses / masses.sum(axis=1, keepdims=True))
-
-
-@dataclass(frozen=True)
-class BurnableFuel:
-    """A fuel as the energy balance of a combustor sees it, by kilogram.
-
-    Parameters
-    ----------
-    made_kg_per_kg : array, shape (species,) [-]
-        What complete combustion adds of each species for a kilogram of fuel; oxygen is taken away.
-        Adds up to one.
-    enthalpy_kJ_per_kg : float [kJ/kg]
-        Absolute enthalpy at 25 degC, consistent with the net calorific value.
-    lhv_kJ_per_kg : float [kJ/kg]
-        Net calorific value.
-    """
-
-    made_kg_per_kg: FloatArray
-    enthalpy_kJ_per_kg: float
-    lhv_kJ_per_kg: float
-
-
-def burnable(fuel: GasFuel) -> BurnableFuel:
-    """A fuel for the energy balance of combustors.
-
-    Parameters
-    ----------
-    fuel : GasFuel
-        By composition.
-
-    Returns
-    -------
-    BurnableFuel
-        Its absolute enthalpy is that of its products at 25 degC plus its net calorific value. The
-        fuel is taken to arrive at 25 degC: 30 K more bring 0.15 % of its heat.
-    """
-    masses = molar_masses_kg_per_kmol()
-    per_mole = np.array(
-        [fuel.nitrogen / 2, -fuel.oxygen_need_mol_per_mol, 0.0, fuel.carbon, fuel.hydrogen / 2]
-    )
-    made = per_mole * masses / fuel.molar_mass_kg_per_kmol
-    made[0] += 1.0 - made.sum()  # atomic masses of two tables differ in the sixth digit
-    pure = Mixture(np.eye(len(SPECIES)))
-    products = pure.enthalpy_kJ_per_kg(np.full(len(SPECIES), 298.15))
-    lhv_kJ_per_kg = fuel.lhv_MJ_per_kg * 1e3
-    return BurnableFuel(made, float(made @ products) + lhv_kJ_per_kg, lhv_kJ_per_kg)
-
-
-def burnt(air: Mixture, fuel_per_air: FloatArray, fuel: BurnableFuel) -> Mixture:
-    """Gas after complete combustion.
-
-    Parameters
-    ----------
-    air : Mixture
-        Before the combustor.
-    fuel_per_air : array, shape (hours,) [-]
-        Mass of fuel over mass of air.
-    fuel : BurnableFuel
-        What is burnt.
-
-    Returns
-    -------
-    Mixture
-        Products and the air that is left.
-    """
-    masses = air.mass_frac + fuel_per_air[:, None] * fuel.made_kg_per_kg
-    return Mixture(masses / masses.sum(axis=1, keepdims=True))

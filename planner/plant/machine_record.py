@@ -2,14 +2,16 @@
 
 import numpy as np
 
-from planner.arrays import FloatArray
 from planner.constants import ZERO_CELSIUS_K
+from planner.plant.envelope_fit import NODES
+from planner.plant.exchange import GasFlow
 from planner.plant.exhaust_paths import exhaust_of
 from planner.plant.load import NetMachine
-from planner.plant.recovery import GasFlow, run_steam_boiler, run_water_heater
 from planner.plant.running import RunningPoint, ambient
+from planner.plant.steam_boiler import run_steam_boiler
 from planner.plant.turbine import COMBUSTOR_PRESSURE_LOSS_FRAC
-from planner.plant.unit_year import NODES, UnitYear
+from planner.plant.unit_year import UnitYear
+from planner.plant.water_heater import run_water_heater
 from planner.results.records import Machine, OperatingPoint, Station
 
 #: Ambients and loads of the part-load table.
@@ -87,7 +89,7 @@ def _stations(machine: NetMachine, point: RunningPoint) -> list[Station]:
     air = float(point.exhaust_kg_per_s[0] - point.fuel_kg_per_s[0])
     gas = float(point.exhaust_kg_per_s[0])
     fired_kPa = compressed_kPa * (1.0 - COMBUSTOR_PRESSURE_LOSS_FRAC)
-    rows: list[tuple[str, FloatArray, float, float]] = [
+    rows = [
         ("compressor inlet", hours.temperature_K, inlet_kPa, air),
         ("compressor outlet", point.compressed_K, compressed_kPa, air),
         ("turbine inlet, mixed", point.firing_K, fired_kPa, gas),

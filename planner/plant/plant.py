@@ -9,12 +9,13 @@ from load_profiles import Finding, SiteYear
 from load_profiles.site_year import WEATHER_COLUMNS
 from planner.plant.audit import audit_findings, refuse_impossible_sheet
 from planner.plant.envelope import OperatingEnvelope, StoreEnvelope, UnitEnvelope
+from planner.plant.envelope_fit import unit_envelope
 from planner.plant.fuel import GasFuel
 from planner.plant.heaters import chiller_envelopes, heater_envelope
 from planner.plant.machine_record import machine_record
 from planner.plant.plant_findings import site_findings, unit_findings
 from planner.plant.running import RunningPoint
-from planner.plant.unit_year import UnitYear, exact_hours, unit_envelope, unit_year
+from planner.plant.unit_year import UnitYear, exact_hours, unit_year
 from planner.results.records import Machine
 from planner.study.sections import Heat, Option
 from planner.study.study import Study

@@ -7,8 +7,8 @@ import numpy as np
 from load_profiles import Finding, SiteYear
 from planner.constants import ZERO_CELSIUS_K
 from planner.plant.exhaust_paths import exhaust_of
-from planner.plant.recovery import run_steam_boiler
 from planner.plant.running import RunningPoint
+from planner.plant.steam_boiler import run_steam_boiler
 from planner.plant.unit_year import UnitYear
 from planner.study.sections import Option
 from planner.study.study import Study
@@ -73,12 +73,10 @@ def unit_findings(
     tuple of Finding
         Generic machine, minimum load by guarantee, boiling economiser, unused hot gas.
     """
-    return tuple(
-        [
-            *_about_sheet(option, year),
-            *_about_boiler(option, year, full, site_year.step_h),
-            *_about_drying(study, option, full),
-        ]
+    return (
+        *_about_sheet(option, year),
+        *_about_boiler(option, year, full, site_year.step_h),
+        *_about_drying(study, option, full),
     )
 
 

@@ -11,7 +11,9 @@ import numpy as np
 
 from planner.arrays import FloatArray
 from planner.constants import ZERO_CELSIUS_K
-from planner.plant.gas import Mixture, burnt, humid_air, species_enthalpies_kJ_per_kg
+from planner.plant.air import humid_air
+from planner.plant.combustion import burnt
+from planner.plant.gas import Mixture, species_enthalpies_kJ_per_kg
 from planner.plant.turbine import COMBUSTOR_PRESSURE_LOSS_FRAC, GasTurbine
 
 #: Slope of the speed line: logarithm of corrected flow over that of pressure ratio. Common practice
@@ -32,8 +34,12 @@ class Ambient:
 
     Parameters
     ----------
-    temperature_K, inlet_kPa, outlet_kPa : array, shape (hours,)
-        At the compressor's inlet and at the turbine's outlet.
+    temperature_K : array, shape (hours,) [K]
+        At the compressor's inlet.
+    inlet_kPa : array, shape (hours,) [kPa]
+        At the compressor's inlet.
+    outlet_kPa : array, shape (hours,) [kPa]
+        At the turbine's outlet.
     air : Mixture
         Humid air.
     """
@@ -56,8 +62,12 @@ def ambient(
 
     Parameters
     ----------
-    ambient_degC, relative_humidity_frac, pressure_kPa : array, shape (hours,)
-        Weather at the site.
+    ambient_degC : array, shape (hours,) [degC]
+        Dry bulb at the site.
+    relative_humidity_frac : array, shape (hours,) [-]
+        Humidity at the site.
+    pressure_kPa : array, shape (hours,) [kPa]
+        Air pressure at the site.
     inlet_loss_kPa, exhaust_loss_kPa : float [kPa]
         Losses of filter and ducts, and of recovery and stack.
 

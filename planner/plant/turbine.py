@@ -13,8 +13,10 @@ from scipy.optimize import brentq
 
 from planner.arrays import FloatArray
 from planner.constants import ZERO_CELSIUS_K
+from planner.plant.air import humid_air
+from planner.plant.combustion import BurnableFuel, burnable, burnt
 from planner.plant.fuel import GasFuel
-from planner.plant.gas import BurnableFuel, Mixture, burnable, burnt, humid_air
+from planner.plant.gas import Mixture
 from planner.study.sections import DataSheet
 
 #: Combustion efficiency and casing loss of a combustor in good order: common practice.

@@ -1,7 +1,7 @@
-"""Exhaust heat to steam and hot water: designed by pinch, run off design by conductances.
+"""Exhaust heat to steam: designed by pinch, run off design by conductances.
 
-A bank's conductance goes with the 0.6th power of the gas flow. The evaporator boils at the drum's
-temperature, so its gas falls towards it exponentially; economiser and water heater are counterflow.
+The evaporator boils at the drum's temperature, so its gas falls towards it exponentially; the
+economiser is counterflow, and its water is kept just below boiling.
 """
 
 from dataclasses import dataclass
@@ -10,57 +10,23 @@ import numpy as np
 
 from planner.arrays import FloatArray
 from planner.constants import ZERO_CELSIUS_K, STANDARD_PRESSURE_kPa
-from planner.plant.gas import Mixture
+from planner.plant.exchange import (
+    FLOW_EXPONENT,
+    GasFlow,
+    conductance_kW_per_K,
+    counterflow_effectiveness,
+)
 from planner.plant.steam import (
     liquid_enthalpy_kJ_per_kg,
     saturation_degC,
     vapour_enthalpy_kJ_per_kg,
 )
-from planner.study.sections import Recovery, SteamSystem, WaterSystem
-
-#: Conductance over gas flow, as an exponent: common practice for finned tubes.
-FLOW_EXPONENT = 0.6
-
-#: Gas leaves the water heater this far above the returning water, at the design point.
-WATER_APPROACH_K = 25.0
+from planner.study.sections import SteamSystem
 
 ITERATIONS = 40
-BISECTIONS = 60
 
 #: Water of the economiser stays this far below boiling, or steam forms in it.
 STEAMING_MARGIN_K = 1.0
-
-
-@dataclass(frozen=True)
-class GasFlow:
-    """Exhaust of some hours.
-
-    Parameters
-    ----------
-    gas : Mixture
-        Composition of each hour.
-    flow_kg_per_s, temperature_K : array, shape (hours,)
-        At the turbine's flange.
-    """
-
-    gas: Mixture
-    flow_kg_per_s: FloatArray
-    temperature_K: FloatArray
-
-    def cooled_to_kW(self, temperature_K: FloatArray | float) -> FloatArray:
-        """Heat that cooling to a temperature gives."""
-        cold = np.zeros_like(self.temperature_K) + temperature_K
-        drop = self.gas.enthalpy_kJ_per_kg(self.temperature_K) - self.gas.enthalpy_kJ_per_kg(cold)
-        return np.asarray(self.flow_kg_per_s * drop)
-
-    def after_kW(self, heat_kW: FloatArray) -> FloatArray:
-        """Temperature after giving up some heat."""
-        enthalpy = self.gas.enthalpy_kJ_per_kg(self.temperature_K) - heat_kW / self.flow_kg_per_s
-        return self.gas.temperature_at_enthalpy_K(enthalpy, self.temperature_K - 100.0)
-
-    def at(self, temperature_K: FloatArray) -> "GasFlow":
-        """The same gas, cooled to a temperature."""
-        return GasFlow(self.gas, self.flow_kg_per_s, temperature_K)
 
 
 @dataclass(frozen=True)
@@ -142,8 +108,10 @@ class SteamBoiler:
         Water side.
     loss_frac : float [-]
         Casing loss over heat given up.
-    feedwater_degC, approach_K : float
-        Water into and below boiling out of the economiser at the design point.
+    feedwater_degC : float [degC]
+        Water into the economiser.
+    approach_K : float [K]
+        Water below boiling out of the economiser at the design point.
     evaporator_kW_per_K, economiser_kW_per_K : float [kW/K]
         Conductances at the design flow.
     design_flow_kg_per_s : float [kg/s]
@@ -215,10 +183,10 @@ def design_steam_boiler(
         loss_frac=loss_frac,
         feedwater_degC=system.feedwater_degC,
         approach_K=approach_K,
-        evaporator_kW_per_K=_conductance(
+        evaporator_kW_per_K=conductance_kW_per_K(
             evaporator_kW, exhaust.temperature_K - boiling_K, np.array([pinch_K])
         ),
-        economiser_kW_per_K=_conductance(
+        economiser_kW_per_K=conductance_kW_per_K(
             economiser_kW, pinch_gas_K - (boiling_K - approach_K), stack_K - feed_K
         ),
         design_flow_kg_per_s=float(exhaust.flow_kg_per_s[0]),
@@ -289,147 +257,7 @@ def _with_economiser(
     return SteamRun(steam, behind.temperature_K, stack_K, reached_K > hottest_K)
 
 
-def counterflow_effectiveness(ntu: FloatArray, ratio: FloatArray) -> FloatArray:
-    r"""Effectiveness of a counterflow exchanger.
-
-    .. math:: \epsilon = \frac{1 - e^{-N(1-C)}}{1 - C e^{-N(1-C)}}
-
-    Parameters
-    ----------
-    ntu : array [-]
-        Conductance over the smaller capacity flow.
-    ratio : array [-]
-        Smaller over larger capacity flow, 0 to 1.
-
-    Returns
-    -------
-    array [-]
-        Heat over the most that could be passed.
-
-    Examples
-    --------
-    >>> print(f"{counterflow_effectiveness(np.array([2.0]), np.array([0.5]))[0]:.4f}")
-    0.7746
-    """
-    near_one = np.minimum(ratio, 1.0 - 1e-9)
-    decay = np.exp(-np.asarray(ntu) * (1.0 - near_one))
-    return np.asarray((1.0 - decay) / (1.0 - near_one * decay))
-
-
-@dataclass(frozen=True)
-class WaterHeater:
-    """A bank that heats the network's return to its flow temperature, designed.
-
-    Parameters
-    ----------
-    flow_degC, return_degC : float [degC]
-        Of the network.
-    loss_frac : float [-]
-        Casing loss over heat given up.
-    coldest_stack_degC : float [degC]
-        Gas is cooled no further.
-    conductance_kW_per_K : float [kW/K]
-        At the design flow.
-    design_flow_kg_per_s : float [kg/s]
-        Gas at the design point.
-    """
-
-    flow_degC: float
-    return_degC: float
-    loss_frac: float
-    coldest_stack_degC: float
-    conductance_kW_per_K: float
-    design_flow_kg_per_s: float
-
-
-def design_water_heater(
-    exhaust: GasFlow, system: WaterSystem, recovery: Recovery
-) -> WaterHeater | None:
-    """Size a water heater for one gas.
-
-    Parameters
-    ----------
-    exhaust : GasFlow
-        One hour: the design point, behind whatever stands before the bank.
-    system : WaterSystem
-        The network.
-    recovery : Recovery
-        Losses and the coldest stack.
-
-    Returns
-    -------
-    WaterHeater or None
-        None where the gas is too cold to reach the flow temperature.
-    """
-    coldest_degC = max(recovery.minimum_stack_degC, system.return_degC + WATER_APPROACH_K)
-    hot_degC = float(exhaust.temperature_K[0]) - ZERO_CELSIUS_K
-    if hot_degC <= max(coldest_degC, system.flow_degC) + 1.0:
-        return None
-    heat_kW = exhaust.cooled_to_kW(coldest_degC + ZERO_CELSIUS_K) * (1.0 - recovery.loss_frac)
-    conductance = _conductance(
-        heat_kW,
-        np.array([hot_degC - system.flow_degC]),
-        np.array([coldest_degC - system.return_degC]),
-    )
-    return WaterHeater(
-        flow_degC=system.flow_degC,
-        return_degC=system.return_degC,
-        loss_frac=recovery.loss_frac,
-        coldest_stack_degC=recovery.minimum_stack_degC,
-        conductance_kW_per_K=conductance,
-        design_flow_kg_per_s=float(exhaust.flow_kg_per_s[0]),
-    )
-
-
-def run_water_heater(heater: WaterHeater, exhaust: GasFlow) -> tuple[FloatArray, FloatArray]:
-    """Heat of a water heater in some hours.
-
-    Parameters
-    ----------
-    heater : WaterHeater
-        Designed.
-    exhaust : GasFlow
-        Gas before the bank.
-
-    Returns
-    -------
-    tuple of array, shape (hours,) [kW] and array [K]
-        Useful heat, and the stack. The water's flow follows so that it leaves at the flow
-        temperature; the stack is where the bank passes what the gas gives.
-    """
-    flow_K = heater.flow_degC + ZERO_CELSIUS_K
-    return_K = heater.return_degC + ZERO_CELSIUS_K
-    relative = (exhaust.flow_kg_per_s / heater.design_flow_kg_per_s) ** FLOW_EXPONENT
-    hot_K = exhaust.temperature_K
-    usable = hot_K > flow_K + 1.0
-    low_K = np.full_like(hot_K, return_K + 1e-3)
-    high_K = np.maximum(hot_K - 1e-3, low_K)
-    mean_capacity = exhaust.cooled_to_kW(return_K + 30.0) / np.maximum(hot_K - return_K - 30.0, 1.0)
-    for _ in range(BISECTIONS):
-        middle_K = 0.5 * (low_K + high_K)
-        given = mean_capacity * (hot_K - middle_K) * (1.0 - heater.loss_frac)
-        difference = _log_mean(np.maximum(hot_K - flow_K, 1.0), middle_K - return_K)
-        colder = given < heater.conductance_kW_per_K * relative * difference
-        high_K, low_K = np.where(colder, middle_K, high_K), np.where(colder, low_K, middle_K)
-    stack_K = np.maximum(0.5 * (low_K + high_K), heater.coldest_stack_degC + ZERO_CELSIUS_K)
-    stack_K = np.where(usable, np.minimum(stack_K, hot_K), hot_K)
-    return exhaust.cooled_to_kW(stack_K) * (1.0 - heater.loss_frac), stack_K
-
-
 def _evaporation(state: SteamState, entering: FloatArray | float) -> FloatArray:
     """Heat in the evaporator for a kilogram of steam, its blowdown included."""
     per_steam = state.steam - entering
     return np.asarray(per_steam + state.blowdown_frac * (state.boiling - entering))
-
-
-def _log_mean(one: FloatArray, other: FloatArray) -> FloatArray:
-    """Logarithmic mean of two temperature differences."""
-    other = np.maximum(other, 1e-6)
-    equal = np.abs(one - other) < 1e-6 * one
-    logarithm = np.log(np.where(equal, 2.0, one / other))
-    return np.where(equal, one, (one - other) / logarithm)
-
-
-def _conductance(heat_kW: FloatArray, one_K: FloatArray, other_K: FloatArray) -> float:
-    """Conductance that passes a heat between two temperature differences."""
-    return float((heat_kW / _log_mean(one_K, other_K))[0])
