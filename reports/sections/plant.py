@@ -153,6 +153,12 @@ def _facts(option: Facts) -> list[tuple[str, str]]:
             ),
         ),
     ]
+    return [*rows, *_store_and_cooling(record)]
+
+
+def _store_and_cooling(record: Facts) -> list[tuple[str, str]]:
+    """Store and chillers, where the option has them."""
+    rows = []
     if record["store_charged_kWh"] > 0.0:
         charged, given_back = record["store_charged_kWh"], record["store_discharged_kWh"]
         rows.append(
