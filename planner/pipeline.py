@@ -48,7 +48,7 @@ def plan(
     site_year = read_year(source)
 
     with Workers(study, site_year, processes or os.cpu_count() or 1) as workers:
-        progress("dispatching the year as stated", 0.02)
+        progress("dispatching the year; a first run compiles for a minute", 0.02)
         numbers: list[int | None] = [None, *range(len(study.option))]
         found: dict[int, Case] = {}
         for done, (place, case) in enumerate(

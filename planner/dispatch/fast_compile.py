@@ -44,5 +44,5 @@ def compiled(function: Function) -> Function:
     callable
         Called alike; other threads may run meanwhile.
     """
-    numba.config.CACHE_DIR = str(cache_folder())
+    setattr(numba.config, "CACHE_DIR", str(cache_folder()))  # noqa: B010 - its types do not know it
     return cast("Function", numba.njit(cache=True, nogil=True, error_model="numpy")(function))

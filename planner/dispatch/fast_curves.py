@@ -9,7 +9,7 @@ from typing import NamedTuple
 import numpy as np
 
 from planner.arrays import FloatArray, IntArray
-from planner.dispatch import fast_simplex
+from planner.dispatch import fast_parametric, fast_simplex
 from planner.dispatch.fast_compile import compiled
 from planner.dispatch.fast_shape import CHARGE, DISCHARGE, IMPORT, Steps
 
@@ -29,7 +29,7 @@ class Curves(NamedTuple):
     """
 
     corners: FloatArray
-    count: IntArray
+    count: IntArray  # type: ignore[assignment]  # a field here, not the tuple's method
 
 
 class Programme(NamedTuple):
@@ -44,7 +44,20 @@ class Programme(NamedTuple):
 
 @compiled
 def new_programme(steps: Steps, on: int) -> Programme:
-    """Work space for the off or the on state, the parts that never change filled in."""
+    """Work space for the off or the on state, the parts that never change filled in.
+
+    Parameters
+    ----------
+    steps : Steps
+        Programmes of all steps.
+    on : int
+        0 for the off state, 1 for the on state.
+
+    Returns
+    -------
+    Programme
+        For `load_step`.
+    """
     rows, columns = steps.off_rows, steps.off_columns
     if on == 1:
         rows += 1
@@ -66,7 +79,21 @@ def new_programme(steps: Steps, on: int) -> Programme:
 
 @compiled
 def load_step(made: Programme, steps: Steps, step: int, cap: float, surcharge: float) -> None:
-    """Fill in a step, with import capped and surcharged; the store stands still."""
+    """Fill in a step, with import capped and surcharged; the store stands still.
+
+    Parameters
+    ----------
+    made : Programme
+        Changed.
+    steps : Steps
+        Programmes of all steps.
+    step : int
+        Which.
+    cap : float [MW]
+        Most import.
+    surcharge : float [currency/MW]
+        Added to the price of import.
+    """
     rows, columns = made.matrix.shape
     fixed = min(columns, steps.matrix.shape[1])
     for j in range(fixed):
@@ -174,7 +201,7 @@ def curve(
     kept_level, kept_body = made.work.level.copy(), made.work.body.copy()
     kept_reduced, kept_basis = made.work.reduced.copy(), made.work.basis.copy()
     kept_upper = made.work.at_upper.copy()
-    down = fast_simplex.sweep(
+    down = fast_parametric.sweep(
         made.work, rows, columns, steps.moving_row, turn * (steps.lowest - start), IMPORT, half
     )
     made.work.level[:], made.work.body[:, :] = kept_level, kept_body
@@ -184,7 +211,7 @@ def curve(
         return fast_simplex.FAILED
     for k in range(down):
         corners[k] = half[down - 1 - k]
-    up = fast_simplex.sweep(
+    up = fast_parametric.sweep(
         made.work, rows, columns, steps.moving_row, turn * (steps.highest - start), IMPORT, half
     )
     if up < 0 or down + up - 1 > corners.shape[0]:

@@ -11,8 +11,9 @@ from heapq import heappop, heappush
 import numpy as np
 
 from planner.arrays import BoolArray, FloatArray, IntArray
-from planner.dispatch.fast_bound import Year, price_steps, sweep_back
+from planner.dispatch.fast_bound import sweep_back
 from planner.dispatch.fast_shape import KW_PER_MW
+from planner.dispatch.fast_stage import Year, price_steps
 from planner.dispatch.window import Window
 from planner.errors import SolveError
 
@@ -23,7 +24,7 @@ WORTHWHILE_CUT = 0.7
 FIRST_POINTS, FURTHER_POINTS = 6, 5
 
 #: After so many sweeps of one month the bound is taken as it stands.
-MOST_SWEEPS = 3000
+MOST_SWEEPS = 400
 
 NO_VALUES = np.zeros((0, 0, 0))
 
@@ -57,31 +58,8 @@ class _Box:
     """Peaks between two corners, and the best proof known for them."""
 
     rank: float
-    number: int
     low: FloatArray = field(compare=False)
     high: FloatArray = field(compare=False)
-
-
-@dataclass
-class MonthBound:
-    """What is known of a month.
-
-    Parameters
-    ----------
-    before : array, shape (states, prices)
-        Conjugates before the month.
-    peaks : array, shape (charges,) [MW]
-        Best peaks found.
-    sweeps : int
-        How often the month was swept.
-    open_cost : float [currency]
-        How far the bound may lie below the best peaks' cost.
-    """
-
-    before: FloatArray
-    peaks: FloatArray
-    sweeps: int
-    open_cost: float
 
 
 def months_of(window: Window, year: Year, cuts: IntArray) -> list[Month]:
@@ -140,116 +118,140 @@ class MonthSearch:
         self.year, self.month, self.after = year, month, after
         self.stage = np.zeros((month.steps, 2, after.shape[1]))
         self.alive = np.zeros((month.steps, 2), dtype=np.int64)
-        self.no_surcharge = np.zeros((month.steps, 2))
-        self.peaks: list[FloatArray] = []
-        self.found: list[FloatArray] = []
-        self.worth: list[FloatArray] = []
-        self.leaves: list[tuple[int, float]] = []
+        self._no_surcharge = np.zeros((month.steps, 2))
+        self._peaks = np.zeros((MOST_SWEEPS + 1, len(month.rates)))
+        self._worth = np.zeros((MOST_SWEEPS + 1, after.shape[0]))
+        self._least = np.full(after.shape[0], np.inf)
+        self._found: list[FloatArray] = []
+        self._leaves: list[tuple[int, float]] = []
 
-    def caps(self, peaks: FloatArray) -> FloatArray:
-        """Most import in each step under some peaks."""
-        caps = np.full(self.month.steps, np.inf)
-        for mask, peak in zip(self.month.counted, peaks, strict=True):
-            caps[mask] = np.minimum(caps[mask], peak)
-        return caps
+    @property
+    def sweeps(self) -> int:
+        """How often the month was swept."""
+        return len(self._found)
+
+    def best_peaks(self, state: int) -> FloatArray:
+        """Best peaks found for a month that begins in a state [MW]."""
+        costs = self._worth[: self.sweeps, state] + self._peaks[: self.sweeps] @ self.month.rates
+        return self._peaks[int(costs.argmin())]
 
     def price(self, peaks: FloatArray) -> None:
         """Fill the month's steps under some peaks."""
         caps, first = self.caps(peaks), self.month.first
-        if not price_steps(self.year, first, caps, self.no_surcharge, self.stage, self.alive):
+        if not price_steps(self.year, first, caps, self._no_surcharge, self.stage, self.alive):
             raise SolveError(f"a step's programme failed in the month from step {first}")
 
-    def sweep(self, peaks: FloatArray) -> int:
-        """Sweep under some peaks; the number of the sweep."""
-        self.price(peaks)
-        args = (self.year, self.month.first, self.stage, self.alive, self.after, NO_VALUES)
-        before = sweep_back(*args)
-        self.peaks.append(peaks)
-        self.found.append(before)
-        self.worth.append(_worth(self.year, self.month.first, before))
-        return len(self.peaks) - 1
+    def caps(self, peaks: FloatArray) -> FloatArray:
+        """Most import in each step under some peaks [MW]."""
+        caps = np.full(self.month.steps, np.inf)
+        for mask, peak in zip(self.month.counted, peaks, strict=True):
+            np.minimum(caps, peak, out=caps, where=mask)
+        return caps
 
-    def best(self) -> tuple[FloatArray, int]:
-        """Least cost by state over all sweeps, peaks paid, and the sweep best for most."""
-        costs = np.array(self.worth) + (np.array(self.peaks) @ self.month.rates)[:, None]
-        least = costs.min(axis=0)
-        return least, int((costs - least).max(axis=1).argmin())
-
-    def proof(self, high: FloatArray) -> int:
-        """The sweep that says most about peaks up to a corner."""
-        covers = (np.array(self.peaks) >= high - 1e-12).all(axis=1)
-        worth = np.array(self.worth).sum(axis=1)
-        return int(np.where(covers, worth, -np.inf).argmax())
-
-    def bound(self, allowed: float) -> MonthBound:
+    def bound(self, allowed: float, hint: FloatArray | None = None) -> FloatArray:
         """Prove.
 
         Parameters
         ----------
         allowed : float [currency]
             How far the bound may lie below the best peaks' cost.
+        hint : array, shape (charges,), optional [MW]
+            Peaks that were best at other prices.
 
         Returns
         -------
-        MonthBound
-            Valid whatever was allowed.
+        array, shape (states, prices)
+            Conjugates before the month; valid whatever was allowed.
         """
         month = self.month
         if not len(month.rates):
-            number = self.sweep(np.zeros(0))
-            return MonthBound(self.found[number], np.zeros(0), 1, 0.0)
-        self._look_around()
-        boxes = [_Box(0.0, 0, month.lowest, month.highest)]
-        made, worst = 1, 0.0
-        while boxes:
+            self._sweep(np.zeros(0))
+            return self._found[0]
+        self._look_around(hint)
+        boxes = [self._box(month.lowest, month.highest)]
+        while boxes and self.sweeps < MOST_SWEEPS:
             box = heappop(boxes)
-            number = self.proof(box.high)
-            paid = float(month.rates @ box.low)
-            least, _ = self.best()
-            short = float((least - allowed - self.worth[number] - paid).max())
-            if short <= 0.0 or len(self.peaks) > MOST_SWEEPS:
-                self.leaves.append((number, paid))
-                worst = max(worst, short + allowed)
+            number, paid = self._proof(box.high), float(month.rates @ box.low)
+            short = self._short(number, paid) - allowed
+            if short <= 0.0:
+                self._leaves.append((number, paid))
                 continue
-            for low, high in self._smaller(box, number, short, paid):
-                rank = float(-month.rates @ (high - low))
-                heappush(boxes, _Box(rank, made, low, high))
-                made += 1
-        _, chosen = self.best()
-        before = np.max([self.found[n] - paid for n, paid in self.leaves], axis=0)
-        return MonthBound(before, self.peaks[chosen], len(self.peaks), worst)
+            for smaller in self._smaller(box, number, short, paid):
+                heappush(boxes, smaller)
+        for box in boxes:
+            self._leaves.append((self._proof(box.high), float(month.rates @ box.low)))
+        return np.asarray(np.max([self._found[n] - paid for n, paid in self._leaves], axis=0))
 
-    def _smaller(
-        self, box: _Box, number: int, short: float, paid: float
-    ) -> list[tuple[FloatArray, FloatArray]]:
+    def _sweep(self, peaks: FloatArray) -> None:
+        """Sweep under some peaks."""
+        number = self.sweeps
+        if number > MOST_SWEEPS:
+            return
+        self.price(peaks)
+        first = self.month.first
+        before = sweep_back(self.year, first, self.stage, self.alive, self.after, NO_VALUES)
+        self._peaks[number] = peaks
+        self._worth[number] = _worth(self.year, first, before)
+        self._found.append(before)
+        np.minimum(self._least, self._worth[number] + peaks @ self.month.rates, out=self._least)
+
+    def _best(self) -> FloatArray:
+        """Peaks that are near the best whatever the state before."""
+        number = self.sweeps
+        costs = self._worth[:number] + (self._peaks[:number] @ self.month.rates)[:, None]
+        return self._peaks[int((costs - self._least).max(axis=1).argmin())]
+
+    def _proof(self, high: FloatArray) -> int:
+        """The sweep that says most about peaks up to a corner."""
+        number = self.sweeps
+        covers = (self._peaks[:number] >= high - 1e-12).all(axis=1)
+        worth = self._worth[:number].sum(axis=1)
+        return int(np.where(covers, worth, -np.inf).argmax())
+
+    def _short(self, number: int, paid: float) -> float:
+        """How far a sweep's bound lies below the best cost, for the state where that is most."""
+        return float((self._least - self._worth[number] - paid).max())
+
+    def _box(self, low: FloatArray, high: FloatArray) -> _Box:
+        """A box, ranked by what its proof lacks."""
+        paid = float(self.month.rates @ low)
+        return _Box(-self._short(self._proof(high), paid), low, high)
+
+    def _smaller(self, box: _Box, number: int, short: float, paid: float) -> list[_Box]:
         """What a box leaves to prove: cut back, or halved; its new corner is swept."""
         rates = self.month.rates
         high = np.minimum(box.high, box.low + short / rates)
         if (high < box.high).any():
-            self.leaves.append((number, paid + short))
+            self._leaves.append((number, paid + short))
         size, left = float(rates @ (box.high - box.low)), float(rates @ (high - box.low))
         if left < WORTHWHILE_CUT * size:
-            self.sweep(high)
-            return [(box.low, high)]
+            self._sweep(high)
+            return [self._box(box.low, high)]
         widest = int((rates * (high - box.low)).argmax())
         upper_low, lower_high = box.low.copy(), high.copy()
         upper_low[widest] = lower_high[widest] = 0.5 * (box.low[widest] + high[widest])
-        self.sweep(lower_high)
-        return [(upper_low, high), (box.low, lower_high)]
+        self._sweep(lower_high)
+        return [self._box(upper_low, high), self._box(box.low, lower_high)]
 
-    def _look_around(self) -> None:
+    def _look_around(self, hint: FloatArray | None) -> None:
         """Find good peaks before proving anything."""
         month = self.month
-        for part in np.linspace(1.0, 0.0, FIRST_POINTS):
-            self.sweep(month.lowest + part * (month.highest - month.lowest))
-        reach = (month.highest - month.lowest) / (FIRST_POINTS - 1)
-        for _ in range(FURTHER_POINTS):
+        span = month.highest - month.lowest
+        self._sweep(month.highest)
+        if hint is None:
+            for part in np.linspace(0.0, 1.0, FIRST_POINTS)[:-1]:
+                self._sweep(month.lowest + part * span)
+            reach, rounds = span / (FIRST_POINTS - 1), FURTHER_POINTS
+        else:
+            self._sweep(np.clip(hint, month.lowest, month.highest))
+            reach, rounds = 0.02 * span, 2
+        for _ in range(rounds):
             for charge in range(len(month.rates)):
-                _, chosen = self.best()
+                best = self._best()
                 for turn in (-0.5, 0.5):
-                    peaks = self.peaks[chosen].copy()
+                    peaks = best.copy()
                     peaks[charge] += turn * reach[charge]
-                    self.sweep(np.clip(peaks, month.lowest, month.highest))
+                    self._sweep(np.clip(peaks, month.lowest, month.highest))
             reach = 0.5 * reach
 
 

@@ -3,9 +3,9 @@
 import numpy as np
 
 from planner.arrays import FloatArray, IntArray
-from planner.dispatch.fast_bound import Year, free_conjugates, least_imports
 from planner.dispatch.fast_curves import Curves, all_curves
 from planner.dispatch.fast_shape import KW_PER_MW, Steps, minimum_steps, start_costs
+from planner.dispatch.fast_stage import Year, free_conjugates, least_imports
 from planner.dispatch.window import Window
 from planner.errors import SolveError
 
@@ -54,7 +54,7 @@ def prepare(window: Window, steps: Steps) -> Year:
     place = np.arange(window.steps)
     day = place // a_day
     kept = 1.0 - store.loss_frac_per_h * step_h if store else 1.0
-    scale = kept ** (a_day - 1.0 - place % a_day)
+    scale = np.asarray(kept ** (a_day - 1.0 - place % a_day), dtype=np.float64)
     last = day == day[-1]
     scale[last] = kept ** (window.steps - 1.0 - place[last])
     grid = _grid(curves, day, scale, kept**a_day) if store else np.zeros((day[-1] + 1, 1))

@@ -29,8 +29,10 @@ MOST_STATES = 64
 
 
 class Steps(NamedTuple):
-    """All steps of a year as programmes; column order is import, export, charge, discharge,
-    heaters, chillers, then (while on) dumped heat by recovered grade, and the unit's corners.
+    """All steps of a year as programmes.
+
+    Columns in order: import, export, charge, discharge, heaters, chillers, then (while on) dumped
+    heat by recovered grade, and the unit's corners.
 
     Parameters
     ----------
@@ -101,8 +103,10 @@ def why_unknown(year: Window) -> str | None:
         (bool((year.fuel_per_lhv_kWh <= 0.0).any()), "a fuel price at or below zero"),
         (bool((year.export_per_kWh > year.import_per_kWh).any()), "export dearer than import"),
         (bool((np.diff(unit.fuel_slope_lhv, axis=1) < 0.0).any()), "fuel that is not convex"),
-        (any(bool((charge.rate_per_kW < 0.0).any()) for charge in prices.demand_charges),
-         "a demand charge below zero"),
+        (
+            any(bool((charge.rate_per_kW < 0.0).any()) for charge in prices.demand_charges),
+            "a demand charge below zero",
+        ),
         (year.store is not None and not _has_hot_water(year), "a store that nothing can charge"),
     )
     return next((reason for holds, reason in reasons if holds), None)
@@ -217,13 +221,21 @@ def _fixed_columns(
         ("discharge", {"hot_water": 1.0}, store.maximum_discharge_kW if store else 0.0, free),
     ]
     columns += [
-        (f"heater {number}", {heater.carrier: 1.0}, heater.maximum_heat_kW,
-         heater.fuel_per_heat_lhv * year.fuel_per_lhv_kWh)
+        (
+            f"heater {number}",
+            {heater.carrier: 1.0},
+            heater.maximum_heat_kW,
+            heater.fuel_per_heat_lhv * year.fuel_per_lhv_kWh,
+        )
         for number, heater in enumerate(year.heaters)
     ]
     columns += [
-        (f"chiller {number}", {"cooling": 1.0, chiller.drive: -1.0 / chiller.cop},
-         chiller.maximum_cooling_kW, free)
+        (
+            f"chiller {number}",
+            {"cooling": 1.0, chiller.drive: -1.0 / chiller.cop},
+            chiller.maximum_cooling_kW,
+            free,
+        )
         for number, chiller in enumerate(year.chillers)
     ]
     columns += [(f"dumped {grade}", {grade: -1.0}, np.inf, free) for grade in year.recovered_grades]
@@ -231,9 +243,7 @@ def _fixed_columns(
     return [c[0] for c in columns], known, [c[2] for c in columns], [c[3] for c in columns]
 
 
-def _corners(
-    year: Window, rows: tuple[str, ...]
-) -> tuple[list[str], FloatArray, FloatArray]:
+def _corners(year: Window, rows: tuple[str, ...]) -> tuple[list[str], FloatArray, FloatArray]:
     """Names, entries and costs of the unit's corners."""
     unit = year.unit
     if unit is None:

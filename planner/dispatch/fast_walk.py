@@ -3,8 +3,9 @@
 import numpy as np
 
 from planner.arrays import FloatArray, IntArray
-from planner.dispatch.fast_bound import HOPELESS, Year
+from planner.dispatch.fast_bound import HOPELESS
 from planner.dispatch.fast_compile import compiled
+from planner.dispatch.fast_stage import Year
 
 
 @compiled
@@ -94,9 +95,7 @@ def walk(
             return -1, level
         running = year.running[chosen]
         if year.capacity > 0.0:
-            level = _level_after(
-                year, step, left, place, values[h, chosen], stage[h, running]
-            )
+            level = _level_after(year, step, left, place, values[h, chosen], stage[h, running])
         state, on[h] = chosen, running
         prices[h] = year.grid[year.day[step], place] * year.scale[step]
     return state, level

@@ -6,6 +6,7 @@ import numpy as np
 
 from planner.arrays import BoolArray, FloatArray, IntArray
 from planner.dispatch.commitment import starts_of
+from planner.dispatch.months import borders
 from planner.dispatch.places import WindowProgram
 from planner.dispatch.segment_order import SegmentOrder, mended_order, no_order
 from planner.dispatch.solver import Answer
@@ -68,7 +69,7 @@ class FixedYear:
         return self.built.level_values(self.answer, cuts)
 
 
-def solve_fixed(window: Window, on: BoolArray) -> FixedYear:
+def solve_fixed(window: Window, on: BoolArray, levels_kWh: FloatArray | None = None) -> FixedYear:
     """Solve a year with the unit's state fixed.
 
     Parameters
@@ -77,6 +78,9 @@ def solve_fixed(window: Window, on: BoolArray) -> FixedYear:
         Steps that begin and end with the same level of the store.
     on : array of bool, shape (steps,)
         State of the unit; ignored where there is none.
+    levels_kWh : array, shape (months,), optional [kWh]
+        Level of the store at the end of each month, to be kept; the months are then solved apart,
+        in half the time.
 
     Returns
     -------
@@ -96,7 +100,7 @@ def solve_fixed(window: Window, on: BoolArray) -> FixedYear:
     order: SegmentOrder | None = None
     for _ in range(MOST_ROUNDS):
         built = build(window, order)
-        answer = _solved(built, on)
+        answer = _solved(built, on, borders(window)[1:] - 1, levels_kWh)
         filled_kW = built.segments_kW(answer.column_values, window.unit.segment_power_kW.shape)
         last = order or no_order(window.unit)
         further = mended_order(window.unit, window.paths, filled_kW, on, last)
@@ -106,10 +110,15 @@ def solve_fixed(window: Window, on: BoolArray) -> FixedYear:
     raise SolveError("the order of the unit's segments did not settle")
 
 
-def _solved(built: WindowProgram, on: BoolArray) -> Answer:
-    """The programme with the state fixed."""
+def _solved(
+    built: WindowProgram, on: BoolArray, ends: IntArray, levels_kWh: FloatArray | None
+) -> Answer:
+    """The programme with the state fixed, and the store's levels at months' ends where given."""
     if built.columns.on is None or built.columns.start is None:
         raise ValueError("a year with a unit has columns for its state")
     columns = np.concatenate([built.columns.on, built.columns.start])
     state = np.concatenate([on, starts_of(on)]).astype(np.float64)
+    if levels_kWh is not None and built.columns.level is not None:
+        columns = np.concatenate([columns, built.columns.level[ends]])
+        state = np.concatenate([state, levels_kWh])
     return built.program.solve_relaxed(fixed=(columns, state))

@@ -170,7 +170,7 @@ class _Search:
             return self._by_months(f"the faster way does not know {unknown}")
         try:
             found = self._by_prices()
-        except (SolveError, RuntimeError) as error:  # whatever it died of, months are tried
+        except SolveError as error:  # whatever it died of, months are tried
             return self._by_months(f"the faster way failed: {error}")
         poor = found.year.cost - found.bound > POOR_RATIO * self._gap_frac * abs(found.year.cost)
         if poor and time.perf_counter() < self._deadline:
@@ -182,7 +182,7 @@ class _Search:
         self._told("the year by prices of stored heat", 0.1)
         quick = solve_window(self._year, self._gap_frac)
         self._told("the year with its state", 0.6)
-        return _Found(self._tried(quick["on"]), quick["lb"], QUICK_PATH)
+        return _Found(self._tried(quick.on, quick.levels_kWh), quick.bound, QUICK_PATH)
 
     def _by_months(self, reason: str) -> _Found:
         """Bound and schedule from months solved apart, improved until the gap is good enough."""
@@ -229,16 +229,19 @@ class _Search:
         answer = built.program.solve_relaxed()
         return built.level_values(answer, cuts)
 
-    def _tried(self, on: BoolArray) -> FixedYear:
-        """The year with a state, or where that cannot serve the site, with the unit always on."""
+    def _tried(self, on: BoolArray, levels_kWh: FloatArray | None = None) -> FixedYear:
+        """The year with a state, or where that cannot serve the site, with the unit always on.
+
+        With the store's levels at the months' borders given, the months are solved apart.
+        """
         unit = self._year.unit
         always = on if unit is None else unit.available
-        states = [on, always, np.zeros_like(on)]
+        states = [on] * (2 if levels_kWh is not None else 1) + [always, np.zeros_like(on)]
         for state in states[:-1]:
             try:
-                return solve_fixed(self._year, mended(state, self._year))
+                return solve_fixed(self._year, mended(state, self._year), levels_kWh)
             except InfeasibleError:
-                continue
+                levels_kWh = None
         return solve_fixed(self._year, states[-1])
 
 
