@@ -6,7 +6,7 @@ import numpy as np
 
 from planner.arrays import BoolArray, FloatArray, IntArray
 from planner.dispatch.commitment import starts_of
-from planner.dispatch.months import borders
+from planner.dispatch.months import borders, months_are_apart
 from planner.dispatch.places import WindowProgram
 from planner.dispatch.segment_order import SegmentOrder, mended_order, no_order
 from planner.dispatch.solver import Answer
@@ -97,6 +97,8 @@ def solve_fixed(window: Window, on: BoolArray, levels_kWh: FloatArray | None = N
     if window.unit is None:
         built = build(window)
         return FixedYear(window, on, None, built, built.program.solve_relaxed())
+    if not months_are_apart(window):
+        levels_kWh = None
     order: SegmentOrder | None = None
     for _ in range(MOST_ROUNDS):
         built = build(window, order)

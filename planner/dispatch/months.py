@@ -78,6 +78,27 @@ def borders(year: Window) -> IntArray:
     return np.concatenate([[0], inner, [year.steps]]).astype(np.int64)
 
 
+def months_are_apart(year: Window) -> bool:
+    """Whether no billing period comes in two of the pieces.
+
+    Parameters
+    ----------
+    year : Window
+        All steps.
+
+    Returns
+    -------
+    bool
+        False where the last hour of a shifted local year falls into January again: its peak then
+        holds two pieces together.
+    """
+    for charge in year.prices.demand_charges:
+        pieces = [charge.period[first:after] for first, after in pairwise(borders(year))]
+        if sum(len(np.unique(piece)) for piece in pieces) > len(np.unique(charge.period)):
+            return False
+    return True
+
+
 def solve_months(
     year: Window,
     level_values: FloatArray,

@@ -18,7 +18,7 @@ import pulp
 from planner.arrays import BoolArray
 from planner.dispatch.commitment import starts_of
 from planner.dispatch.fixed_state import FixedYear
-from planner.dispatch.months import borders
+from planner.dispatch.months import borders, months_are_apart
 from planner.dispatch.record_rows import always
 from planner.dispatch.record_unit import RecordedUnit
 from planner.dispatch.segment_order import SegmentOrder
@@ -57,7 +57,8 @@ def _recorded_pieces(year: FixedYear) -> Iterator[float]:
     """Cost of each piece of the year by the model of record, starts at its border included."""
     window, unit, starts = year.window, year.window.unit, starts_of(year.on)
     levels = year.levels_kWh
-    for first, after in pairwise(_certified_cuts(window)):
+    cuts = borders(window).tolist() if months_are_apart(window) else [0, window.steps]
+    for first, after in pairwise(cuts):
         steps = slice(first, after)
         order = year.order
         if order is not None:
@@ -68,16 +69,6 @@ def _recorded_pieces(year: FixedYear) -> Iterator[float]:
         if unit is not None and starts[first]:
             fuel = float(window.fuel_per_lhv_kWh[first]) * unit.start_fuel_lhv_kWh
             yield unit.cost_per_start + fuel
-
-
-def _certified_cuts(window: Window) -> list[int]:
-    """Borders of the pieces; the whole year where a billing month comes in two of them."""
-    cuts = [int(cut) for cut in borders(window)]
-    for charge in window.prices.demand_charges:
-        present = [np.unique(charge.period[a:b]) for a, b in pairwise(cuts)]
-        if len(np.unique(np.concatenate(present))) < sum(len(periods) for periods in present):
-            return [0, window.steps]
-    return cuts
 
 
 class DispatchModel(RecordedUnit):

@@ -73,7 +73,23 @@ def counterflow_effectiveness(ntu: FloatArray, ratio: FloatArray) -> FloatArray:
 
 
 def log_mean_K(one: FloatArray, other: FloatArray) -> FloatArray:
-    """Logarithmic mean of two temperature differences."""
+    """Logarithmic mean of two temperature differences.
+
+    Parameters
+    ----------
+    one, other : array [K]
+        Differences at the two ends, above zero.
+
+    Returns
+    -------
+    array [K]
+        Their logarithmic mean; the difference itself where both are equal.
+
+    Examples
+    --------
+    >>> print(f"{log_mean_K(np.array([60.0]), np.array([20.0]))[0]:.2f}")
+    36.41
+    """
     other = np.maximum(other, 1e-6)
     equal = np.abs(one - other) < 1e-6 * one
     logarithm = np.log(np.where(equal, 2.0, one / other))
@@ -81,5 +97,20 @@ def log_mean_K(one: FloatArray, other: FloatArray) -> FloatArray:
 
 
 def conductance_kW_per_K(heat_kW: FloatArray, one_K: FloatArray, other_K: FloatArray) -> float:
-    """Conductance that passes a heat between two temperature differences."""
+    """Conductance that passes a heat between two temperature differences.
+
+    Parameters
+    ----------
+    heat_kW : array, one value [kW]
+        What is passed.
+    one_K : array, one value [K]
+        Difference at one end.
+    other_K : array, one value [K]
+        Difference at the other end.
+
+    Returns
+    -------
+    float [kW/K]
+        Heat over the logarithmic mean difference.
+    """
     return float((heat_kW / log_mean_K(one_K, other_K))[0])
