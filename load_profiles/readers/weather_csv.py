@@ -151,7 +151,9 @@ def _bridged(
     bridged, mask = bridge(hourly, longest=LONGEST_GAP_h)
     standard = site.standard(site.slots(60))
     if mask.any():
-        what = f"{column}: {mask.sum()} h in {runs_of(mask)[0].size} gaps bridged by straight lines"
+        gaps = runs_of(mask)[0].size
+        named = "one gap" if gaps == 1 else f"{gaps} gaps"
+        what = f"{column}: {mask.sum()} h in {named} bridged by straight lines"
         findings.append(Finding(file, what, f"{mask.sum()} h of weather are not measured"))
     starts, lengths = runs_of(np.isnan(bridged))
     for start, length in list(zip(starts, lengths, strict=True))[:5]:

@@ -86,7 +86,7 @@ def nox_limit(study: Study) -> NoxLimit:
     by_volume = row["unit"].startswith("ppm")
     limit = NoxLimit(
         regime=row["what"],
-        source=f"{row['source']}, {row['locator']} ({row['edition']}; {row['confidence']})",
+        source=f"{row['source']}, {row['locator']} ({row['edition']}){_caution(row)}",
         mg_per_Nm3=mg_per_Nm3_from_ppm(published) if by_volume else published,
         above_load_frac=float(row["above_load_frac"]),
     )
@@ -94,6 +94,12 @@ def nox_limit(study: Study) -> NoxLimit:
     if local is None or local >= limit.mg_per_Nm3:
         return limit
     return NoxLimit("local limit, stricter than the regime", "the study", local, 0.0)
+
+
+def _caution(row: dict[str, str]) -> str:
+    """What a client must do about a limit that nobody has read in the law itself."""
+    read = row["confidence"] == "read in the source"
+    return "" if read else "; check against the law's text before relying on it"
 
 
 def regime_faults(study: Study) -> tuple[Fault, ...]:
