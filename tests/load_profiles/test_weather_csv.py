@@ -57,7 +57,7 @@ def test_gap_of_six_hours_is_bridged_and_of_seven_refused(tmp_path: Path) -> Non
     year = read(tmp_path)
 
     assert year.ambient_degC[100:106] == pytest.approx([1.0, 2.0, 3.0, 4.0, 5.0, 6.0])
-    assert "ambient_degC: 6 h in 1 gaps bridged" in year.findings[0].what
+    assert "ambient_degC: 6 h in one gap bridged" in year.findings[0].what
     six[106] = np.nan
     PLAIN.write(tmp_path / "weather.csv", six, humidity, pressure_hPa)
     with pytest.raises(ProfileError) as caught:
