@@ -120,7 +120,7 @@ def test_bill_is_that_of_the_hours(demo: Path, site: str) -> None:
         paid = float((hours["grid_import_kW"] * hours["price_import_per_kWh"]).sum())
 
         lines = [line for line in option["bill"]["lines"] if line["section"] == "power"]
-        energy = sum(line["amount"] for line in lines if line["quantity_unit"] == "MWh")
+        energy = sum(line["amount"] for line in lines if line["quantity_unit"] == "kWh")
         assert energy == pytest.approx(paid, rel=1e-6)
         assert option["bill"]["total"] == pytest.approx(
             sum(line["amount"] for line in option["bill"]["lines"]), rel=1e-9

@@ -73,6 +73,8 @@ def test_interrupt_leaves_nothing_half_done(wrenfield: Path) -> None:
         stdout=subprocess.PIPE,
         stderr=subprocess.PIPE,
         text=True,
+        # A shell starts its background jobs with interrupts ignored, and they would inherit that.
+        preexec_fn=lambda: signal.signal(signal.SIGINT, signal.default_int_handler),  # noqa: PLW1509
     ) as running:
         time.sleep(6.0)
         running.send_signal(signal.SIGINT)
