@@ -13,13 +13,15 @@ LEFT, RIGHT, TOP, FOOT = 11.0, 124.0, 6.0, 44.0
 Curve = Sequence[Sequence[float]]
 
 
-def draw_composite(gas: Curve, sink: Curve) -> str:
+def draw_composite(gas: Curve, sink: Curve, taken_by: str) -> str:
     """Draw the figure.
 
     Parameters
     ----------
     gas, sink : sequence of (heat [kW], temperature [degC])
         The exhaust as it gives up heat, and what takes it up against the same heat.
+    taken_by : str
+        What takes it up, in words.
 
     Returns
     -------
@@ -43,7 +45,7 @@ def draw_composite(gas: Curve, sink: Curve) -> str:
     )
     for curve, colour, name, lift in (
         (gas, HEAT_HIGH, "exhaust", -2.0),
-        (sink, POWER, "steam and water", 4.0),
+        (sink, POWER, taken_by, 4.0),
     ):
         if not curve:
             continue

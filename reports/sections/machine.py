@@ -96,7 +96,7 @@ def _composite(record: Facts, figures: Figures) -> Figure | None:
     if len(gas) < 2 or len(sink) < 2:  # noqa: PLR2004 - no line to draw
         return None
     return figures.add(
-        draw_composite(gas, sink),
+        draw_composite(gas, sink, _taken_by(record["paths"])),
         title=f"{power(gas[-1][0])} of heat down to {number(gas[-1][1])}\u202f°C at the stack",
         see="What to see: the two lines may come near but never cross; where they are "
         "closest is the pinch "
@@ -106,3 +106,10 @@ def _composite(record: Facts, figures: Figures) -> Figure | None:
             f"it gives up {power(gas[-1][0])}."
         ),
     )
+
+
+def _taken_by(paths: list[str]) -> str:
+    """What takes the exhaust's heat up."""
+    if "steam, then water" in paths:
+        return "steam and water"
+    return "water" if "water only" in paths else "dryer"
