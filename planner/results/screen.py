@@ -2,7 +2,7 @@
 
 import textwrap
 
-from planner.results.records import OptionOutcome, Results
+from planner.results.records import Carbon, OptionOutcome, Results
 
 #: Findings shown in full; the report has them all.
 SHOWN_FINDINGS = 6
@@ -51,7 +51,6 @@ def _option_lines(option: OptionOutcome, results: Results) -> list[str]:
     energy = option.energy
     used = sum(energy.recovered_kWh.values()) - sum(energy.dumped_kWh.values())
     payback = money.simple_payback_years
-    stops = f"until {carbon.stops_year - 1}" if carbon.stops_year else "over its whole life"
     irr = "none" if money.irr_real_frac is None else f"{money.irr_real_frac:.1%}"
     return [
         _pair("power made", f"{energy.power_made_kWh / 1e3:,.0f} MWh")
@@ -66,12 +65,21 @@ def _option_lines(option: OptionOutcome, results: Results) -> list[str]:
         ),
         _pair("NPV, real", f"{money.npv_real:,.0f} {currency}") + _pair("IRR, real", irr),
         _pair("CO2 saved over life", f"{carbon.lifetime_saved_t:,.0f} t")
-        + _pair("saves carbon", stops if carbon.first_year_saved_t > 0 else "in no year at first"),
+        + _pair("saves carbon", _saving_years(carbon)),
         _pair("NOx", f"{nox.band_centre_mg_per_Nm3:.0f} mg/Nm3, limit {nox.limit_mg_per_Nm3:.0f}")
         + _pair("against its limit", nox.status),
         _pair("proven gap", f"{option.proof.gap_frac:.3%}")
         + _pair("control assumed", option.proof.control),
     ]
+
+
+def _saving_years(carbon: Carbon) -> str:
+    """In which years an option emits less than separate supply."""
+    if all(year.saved_t <= 0.0 for year in carbon.by_year):
+        return "in no year"
+    if carbon.first_year_saved_t <= 0.0:
+        return "not in its first year"
+    return f"until {carbon.stops_year - 1}" if carbon.stops_year else "over its whole life"
 
 
 def _pair(label: str, value: str) -> str:
