@@ -63,7 +63,7 @@ HEAVY = {
 
 #: A place on somebody's machine, an address of a registry, work put off.
 UNWANTED = re.compile(
-    r"(?<![\w.])/(?:home|root|Users|tmp|work|mnt)/\w|pypi\.org|pythonhosted|index-url"
+    r"(?<![\w.])/(?:home|root|Users|tmp|work|mnt)/\w|(?:find|index)[-]?(?:links|url)"
     r"|\bTODO\b|\bFIXME\b|\bXXX\b"
 )
 
