@@ -1,5 +1,7 @@
 """The first-law audit of a data sheet: fuel less power, exhaust and losses, over fuel (LHV)."""
 
+from collections.abc import Iterator
+
 from load_profiles import Fault, Finding
 from planner.errors import StudyError
 from planner.plant.fuel import GasFuel
@@ -8,6 +10,9 @@ from planner.plant.turbine import GasTurbine, calibrate
 #: Residuals within which a sheet is taken as it is, and beyond which it is refused.
 USUAL_FRAC = (0.0, 0.02)
 POSSIBLE_FRAC = (-0.03, 0.05)
+
+#: Polytropic efficiencies of machines on the market: common practice, 0.84 to 0.89.
+USUAL_POLYTROPIC = (0.80, 0.92)
 
 #: A basis is named as the cause where taking it the other way brings the residual within this.
 NAMED_WITHIN_FRAC = 0.01
@@ -46,7 +51,10 @@ def _cause(turbine: GasTurbine, fuel: GasFuel) -> str:
     """A calorific value taken for the other, where that explains the residual."""
     sheet = turbine.sheet
     other = "HHV" if sheet.efficiency_basis == "LHV" else "LHV"
-    turned = calibrate(sheet.model_copy(update={"efficiency_basis": other}), fuel)
+    try:
+        turned = calibrate(sheet.model_copy(update={"efficiency_basis": other}), fuel)
+    except StudyError:
+        return "the cause is unexplained"
     if abs(turned.audit_residual_frac) <= NAMED_WITHIN_FRAC:
         return (
             f"the efficiency is {other}, not {sheet.efficiency_basis}: with {other} the residual "
@@ -68,19 +76,38 @@ def audit_findings(turbine: GasTurbine, option: str) -> tuple[Finding, ...]:
     Returns
     -------
     tuple of Finding
-        One where the residual is outside 0 to +2 % of fuel.
+        One where the residual is outside 0 to +2 % of fuel, one where the cycle takes an unusual
+        polytropic efficiency.
     """
+    return (*_about_residual(turbine, option), *_about_cycle(turbine, option))
+
+
+def _about_residual(turbine: GasTurbine, option: str) -> Iterator[Finding]:
+    """Fuel less power, exhaust and losses is unusual."""
     residual = turbine.audit_residual_frac
     low, high = USUAL_FRAC
     if low <= residual <= high:
-        return ()
+        return
     accepted = turbine.sheet.audit_accepted_because
-    return (
-        Finding(
-            where=f"{option}, data sheet",
-            what=f"the first-law audit leaves {residual:+.1%} of fuel (LHV), outside 0 to +2 %",
-            effect="exhaust heat is uncertain by about as much of the fuel",
-            advice=accepted or "Ask the maker which of the sheet's numbers are guaranteed.",
-            severity="attention",
-        ),
+    yield Finding(
+        where=f"{option}, data sheet",
+        what=f"the first-law audit leaves {residual:+.1%} of fuel (LHV), outside 0 to +2 %",
+        effect="exhaust heat is uncertain by about as much of the fuel",
+        advice=accepted or "Ask the maker which of the sheet's numbers are guaranteed.",
+        severity="attention",
+    )
+
+
+def _about_cycle(turbine: GasTurbine, option: str) -> Iterator[Finding]:
+    """The first law does not see the pressure ratio; the polytropic efficiency does."""
+    low, high = USUAL_POLYTROPIC
+    if low <= turbine.polytropic_efficiency <= high:
+        return
+    yield Finding(
+        where=f"{option}, data sheet",
+        what=f"compressor and turbine would need a polytropic efficiency of "
+        f"{turbine.polytropic_efficiency:.2f}, outside {low:.2f} to {high:.2f}",
+        effect="behaviour away from the sheet's condition is uncertain",
+        advice="Check the pressure ratio, and that the machine has no recuperator.",
+        severity="attention",
     )

@@ -15,7 +15,7 @@ NODES = (0.0, 0.5, 1.0)
 
 def unit_envelope(
     year: UnitYear, costs: tuple[float, float, float]
-) -> tuple[UnitEnvelope, RunningPoint]:
+) -> tuple[UnitEnvelope, RunningPoint, RunningPoint]:
     """The machine as piecewise-linear functions of net power, exact where the pieces meet.
 
     Parameters
@@ -27,8 +27,9 @@ def unit_envelope(
 
     Returns
     -------
-    tuple of UnitEnvelope and RunningPoint
-        For the dispatch, and the clean machine's full load, from which exact points are sought.
+    tuple of UnitEnvelope, RunningPoint and RunningPoint
+        For the dispatch; the clean machine's full load, from which exact points are sought; and
+        the aged machine at its minimum load.
     """
     full = year.full_load()
     aged_full = year.aged(full)
@@ -56,7 +57,7 @@ def unit_envelope(
         cost_per_kWh=per_kWh,
         cost_per_start=per_start,
     )
-    return envelope, full
+    return envelope, full, points[0]
 
 
 def _path(

@@ -122,7 +122,7 @@ def design_paths(heat: Heat, recovery: Recovery, design: RunningPoint) -> HeatPa
     Returns
     -------
     HeatPaths
-        Banks with the conductances that the design needs.
+        Banks with the conductances that the design needs; none where the exhaust is too cold.
     """
     exhaust = exhaust_of(design)
     boiler = behind = alone = None
@@ -135,8 +135,9 @@ def design_paths(heat: Heat, recovery: Recovery, design: RunningPoint) -> HeatPa
             approach_K=recovery.approach_K,
             loss_frac=recovery.loss_frac,
         )
+    if boiler is not None and water is not None:
         stack = exhaust.at(run_steam_boiler(boiler, exhaust).stack_K)
-        behind = None if water is None else design_water_heater(stack, water, recovery)
+        behind = design_water_heater(stack, water, recovery)
     if water is not None:
         alone = design_water_heater(exhaust, water, recovery)
     return HeatPaths(heat, recovery, boiler, behind, alone)

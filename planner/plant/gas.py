@@ -79,8 +79,7 @@ class Mixture:
         array, shape (hours,) [kJ/kgK]
             Mean of the species by mass.
         """
-        a, t = self._polynomial(temperature_K), temperature_K
-        return np.asarray(a[0] + t * (a[1] + t * (a[2] + t * (a[3] + t * a[4]))))
+        return _specific_heat(self._polynomial(temperature_K), temperature_K)
 
     def enthalpy_kJ_per_kg(self, temperature_K: FloatArray) -> FloatArray:
         """Enthalpy, formation from the elements at 25 degC included.
@@ -95,9 +94,7 @@ class Mixture:
         array, shape (hours,) [kJ/kg]
             Absolute, so that combustion needs no term of its own.
         """
-        a, t = self._polynomial(temperature_K), temperature_K
-        inner = a[2] / 3.0 + t * (a[3] / 4.0 + t * a[4] / 5.0)
-        return np.asarray(a[5] + t * (a[0] + t * (a[1] / 2.0 + t * inner)))
+        return _enthalpy(self._polynomial(temperature_K), temperature_K)
 
     def entropy_kJ_per_kgK(self, temperature_K: FloatArray) -> FloatArray:
         """Temperature part of the entropy, at one atmosphere and without mixing.
@@ -112,9 +109,7 @@ class Mixture:
         array, shape (hours,) [kJ/kgK]
             Differences at one composition are what it serves for.
         """
-        a, t = self._polynomial(temperature_K), temperature_K
-        inner = a[2] / 2.0 + t * (a[3] / 3.0 + t * a[4] / 4.0)
-        return np.asarray(a[0] * np.log(t) + a[6] + t * (a[1] + t * inner))
+        return _entropy(self._polynomial(temperature_K), temperature_K)
 
     def temperature_at_enthalpy_K(
         self, enthalpy_kJ_per_kg: FloatArray, guess_K: FloatArray | float
@@ -135,7 +130,8 @@ class Mixture:
         """
         t = np.full_like(enthalpy_kJ_per_kg, 1.0) * guess_K
         for _ in range(NEWTON_STEPS):
-            step = (enthalpy_kJ_per_kg - self.enthalpy_kJ_per_kg(t)) / self.cp_kJ_per_kgK(t)
+            a = self._polynomial(t)
+            step = (enthalpy_kJ_per_kg - _enthalpy(a, t)) / _specific_heat(a, t)
             t = np.clip(t + step, *TEMPERATURE_RANGE_K)
             if np.abs(step).max() < NEWTON_TOLERANCE_K:
                 break
@@ -160,7 +156,8 @@ class Mixture:
         """
         t = np.full_like(entropy_kJ_per_kgK, 1.0) * guess_K
         for _ in range(NEWTON_STEPS):
-            step = (entropy_kJ_per_kgK - self.entropy_kJ_per_kgK(t)) / self.cp_kJ_per_kgK(t)
+            a = self._polynomial(t)
+            step = (entropy_kJ_per_kgK - _entropy(a, t)) / _specific_heat(a, t)
             moved = np.clip(t * np.exp(step), *TEMPERATURE_RANGE_K)
             done = np.abs(moved - t).max() < NEWTON_TOLERANCE_K
             t = moved
@@ -177,6 +174,23 @@ class Mixture:
         if hot.all():
             return np.asarray((self.mass_frac @ high).T)
         return np.where(hot, (self.mass_frac @ high).T, (self.mass_frac @ low).T)
+
+
+def _specific_heat(a: FloatArray, t: FloatArray) -> FloatArray:
+    """Specific heat of polynomials, NASA's five terms [kJ/kgK]."""
+    return np.asarray(a[0] + t * (a[1] + t * (a[2] + t * (a[3] + t * a[4]))))
+
+
+def _enthalpy(a: FloatArray, t: FloatArray) -> FloatArray:
+    """Integral of the specific heat, with the constant of formation [kJ/kg]."""
+    inner = a[2] / 3.0 + t * (a[3] / 4.0 + t * a[4] / 5.0)
+    return np.asarray(a[5] + t * (a[0] + t * (a[1] / 2.0 + t * inner)))
+
+
+def _entropy(a: FloatArray, t: FloatArray) -> FloatArray:
+    """Integral of the specific heat over temperature [kJ/kgK]."""
+    inner = a[2] / 2.0 + t * (a[3] / 3.0 + t * a[4] / 4.0)
+    return np.asarray(a[0] * np.log(t) + a[6] + t * (a[1] + t * inner))
 
 
 def species_enthalpies_kJ_per_kg(temperature_K: FloatArray) -> FloatArray:

@@ -7,7 +7,7 @@ import pandas as pd
 
 from load_profiles import Finding, SiteYear
 from load_profiles.site_year import WEATHER_COLUMNS
-from planner.plant.audit import audit_findings, refuse_impossible_sheet
+from planner.plant.audit import audit_findings
 from planner.plant.envelope import OperatingEnvelope, StoreEnvelope, UnitEnvelope
 from planner.plant.envelope_fit import unit_envelope
 from planner.plant.fuel import GasFuel
@@ -137,14 +137,13 @@ def _worked_out(
     placed: _Placed,
 ) -> tuple[UnitYear, UnitEnvelope, RunningPoint, tuple[Finding, ...]]:
     """Exact model, envelope, clean full load and findings of a machine at a place."""
-    names = [option.name for option in placed.study.option]
     year = unit_year(placed.study, placed.option, placed.site_year, placed.fuel)
-    number = names.index(placed.option.name) + 1
-    refuse_impossible_sheet(year.turbine, placed.fuel, f"option[{number}].unit.sheet")
-    unit, full = unit_envelope(year, placed.wear)
+    unit, full, lowest = unit_envelope(year, placed.wear)
     findings = (
         *audit_findings(year.turbine, placed.option.name),
-        *unit_findings(placed.study, placed.option, year, full, placed.site_year),
+        *unit_findings(
+            placed.study, placed.option, year, placed.site_year, full=full, lowest=lowest
+        ),
     )
     return year, unit, full, findings
 
@@ -180,7 +179,7 @@ def build_plant(
     Raises
     ------
     StudyError
-        If a data sheet cannot be true.
+        If a data sheet or the steam system cannot be true.
     """
     heaters = tuple(heater_envelope(heater, fuel) for heater in study.separate_supply.heater)
     driven = None if option is None else option.absorption_chiller

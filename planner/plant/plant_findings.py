@@ -51,7 +51,13 @@ def site_findings(study: Study, site_year: SiteYear) -> tuple[Finding, ...]:
 
 
 def unit_findings(
-    study: Study, option: Option, year: UnitYear, full: RunningPoint, site_year: SiteYear
+    study: Study,
+    option: Option,
+    year: UnitYear,
+    site_year: SiteYear,
+    *,
+    full: RunningPoint,
+    lowest: RunningPoint,
 ) -> tuple[Finding, ...]:
     """Doubts about an option's machine and recovery.
 
@@ -63,19 +69,23 @@ def unit_findings(
         As stated.
     year : UnitYear
         Exact model.
-    full : RunningPoint
-        Clean full load of every hour.
     site_year : SiteYear
         Weather.
+    full : RunningPoint
+        Clean full load of every hour.
+    lowest : RunningPoint
+        Aged machine at its minimum load in every hour.
 
     Returns
     -------
     tuple of Finding
-        Generic machine, minimum load by guarantee, boiling economiser, unused hot gas.
+        Generic machine, minimum load by guarantee, recovery that the exhaust is too cold for,
+        boiling economiser, cold stack, unused hot gas.
     """
     return (
         *_about_sheet(option, year),
-        *_about_boiler(option, year, full, site_year.step_h),
+        *_about_cold_exhaust(option, year),
+        *_about_boiler(option, year, lowest, site_year.step_h),
         *_about_drying(study, option, full),
     )
 
@@ -100,15 +110,48 @@ def _about_sheet(option: Option, year: UnitYear) -> Iterator[Finding]:
         )
 
 
+def _about_cold_exhaust(option: Option, year: UnitYear) -> Iterator[Finding]:
+    """Heat that was asked for and that the exhaust is too cold to give."""
+    paths, recovery = year.paths, option.recovery
+    missing = []
+    if recovery.steam and paths.heat.steam is not None and paths.boiler is None:
+        missing.append("steam")
+    if recovery.hot_water and paths.heat.hot_water is not None:
+        if paths.alone is None:
+            missing.append("hot water")
+        elif paths.boiler is not None and paths.behind_boiler is None:
+            missing.append("hot water behind the steam generator")
+    for heat in missing:
+        yield Finding(
+            where=f"{option.name}, recovery",
+            what=f"at the design point the exhaust is too cold to make {heat}",
+            effect="the option is planned without it",
+            advice="Lower the pressure or the flow temperature, or take it out of the option.",
+            severity="attention",
+        )
+
+
 def _about_boiler(
-    option: Option, year: UnitYear, full: RunningPoint, step_h: float
+    option: Option, year: UnitYear, lowest: RunningPoint, step_h: float
 ) -> Iterator[Finding]:
-    """An economiser that boils at full load, or at the lowest load."""
+    """An economiser that boils at the lowest load, and a stack colder than allowed there."""
     boiler = year.paths.boiler
     if boiler is None:
         return
-    low_kW = year.minimum_load_frac * year.net_kW(year.aged(full))
-    run = run_steam_boiler(boiler, exhaust_of(year.exact(low_kW, full)))
+    run = run_steam_boiler(boiler, exhaust_of(lowest))
+    coldest_degC, allowed_degC = (
+        float(run.stack_K.min()) - ZERO_CELSIUS_K,
+        option.recovery.minimum_stack_degC,
+    )
+    if coldest_degC < allowed_degC:
+        yield Finding(
+            where=f"{option.name}, steam generator",
+            what=f"behind the economiser the gas falls to {coldest_degC:.0f} degC, the coldest "
+            f"stack allowed is {allowed_degC:.0f} degC",
+            effect="steam is counted as if the colder stack were allowed",
+            advice="Raise the feedwater's temperature or the pinch.",
+            severity="attention",
+        )
     hours = float(np.count_nonzero(run.steaming) * step_h)
     if hours > STEAMING_HOURS:
         yield Finding(

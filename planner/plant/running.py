@@ -153,12 +153,14 @@ def run(
     if near is not None:
         log_ratio = np.log(near.pressure_ratio)
     matched = _Match(turbine, hours, firing_K, vane_frac, speed)
+    compressed_K: FloatArray | float = turbine.compressed_K if near is None else near.compressed_K
     for _ in range(ITERATIONS):
-        miss = matched.miss(log_ratio)
+        compressed_K = matched.compressed_K(log_ratio, compressed_K)
+        miss = matched.miss(log_ratio, compressed_K)
         log_ratio = log_ratio + miss / (1.0 + SPEED_LINE_SLOPE)
         if np.abs(miss).max() < TOLERANCE:
             break
-    return matched.point(log_ratio)
+    return matched.point(log_ratio, matched.compressed_K(log_ratio, compressed_K))
 
 
 @dataclass(frozen=True)
@@ -193,12 +195,12 @@ class _Match:
             * (1.0 - SPEED_LOSS * (1.0 - self.speed) ** 2)
         )
 
-    def compressed_K(self, log_ratio: FloatArray) -> FloatArray:
-        """Temperature after the compressor."""
+    def compressed_K(self, log_ratio: FloatArray, guess_K: FloatArray | float) -> FloatArray:
+        """Temperature after the compressor, sought from a guess."""
         air = self.hours.air
         rise = air.gas_constant_kJ_per_kgK * log_ratio / self.compressor_efficiency(log_ratio)
         entropy = air.entropy_kJ_per_kgK(self.hours.temperature_K) + rise
-        return air.temperature_at_entropy_K(entropy, self.turbine.compressed_K)
+        return air.temperature_at_entropy_K(entropy, guess_K)
 
     def fuel_per_air(self, compressed_K: FloatArray) -> FloatArray:
         """Fuel that brings the air to the firing temperature."""
@@ -208,9 +210,9 @@ class _Match:
         warmed = air.enthalpy_kJ_per_kg(t4) - air.enthalpy_kJ_per_kg(compressed_K)
         return np.asarray(warmed / (usable - made))
 
-    def miss(self, log_ratio: FloatArray) -> FloatArray:
+    def miss(self, log_ratio: FloatArray, compressed_K: FloatArray) -> FloatArray:
         """Logarithm of the pressure the turbine needs over the one the compressor gives."""
-        far = self.fuel_per_air(self.compressed_K(log_ratio))
+        far = self.fuel_per_air(compressed_K)
         flow = self.air_kg_per_s(log_ratio) * (1.0 + far)
         gas = burnt(self.hours.air, far, self.turbine.fuel)
         root = np.sqrt(self.firing_K * gas.gas_constant_kJ_per_kgK)
@@ -218,10 +220,9 @@ class _Match:
         given_kPa = np.exp(log_ratio) * self.hours.inlet_kPa * (1.0 - COMBUSTOR_PRESSURE_LOSS_FRAC)
         return np.asarray(np.log(needed_kPa / given_kPa))
 
-    def point(self, log_ratio: FloatArray) -> RunningPoint:
+    def point(self, log_ratio: FloatArray, compressed_K: FloatArray) -> RunningPoint:
         """State at the matched pressure ratio."""
         turbine, hours = self.turbine, self.hours
-        compressed_K = self.compressed_K(log_ratio)
         far = self.fuel_per_air(compressed_K)
         air_flow = self.air_kg_per_s(log_ratio)
         gas_flow = air_flow * (1.0 + far)

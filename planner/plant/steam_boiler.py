@@ -8,8 +8,10 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from load_profiles import Fault
 from planner.arrays import FloatArray
 from planner.constants import ZERO_CELSIUS_K, STANDARD_PRESSURE_kPa
+from planner.errors import StudyError
 from planner.plant.exchange import (
     FLOW_EXPONENT,
     GasFlow,
@@ -25,6 +27,9 @@ from planner.study.sections import SteamSystem
 
 ITERATIONS = 40
 
+#: An exhaust that falls by less than this to the pinch makes no steam worth a boiler.
+LEAST_DROP_K = 5.0
+
 #: Water of the economiser stays this far below boiling, or steam forms in it.
 STEAMING_MARGIN_K = 1.0
 
@@ -35,6 +40,8 @@ class SteamState:
 
     Parameters
     ----------
+    pressure_kPa : float [kPa]
+        At the drum, absolute.
     boiling_degC : float [degC]
         At the drum.
     steam, boiling, feed : float [kJ/kg]
@@ -47,6 +54,7 @@ class SteamState:
         Worth of steam at the site's valve over returned condensate and make-up.
     """
 
+    pressure_kPa: float
     boiling_degC: float
     steam: float
     boiling: float
@@ -74,9 +82,21 @@ def steam_state(system: SteamSystem) -> SteamState:
     SteamState
         The deaerator takes live steam to bring condensate and make-up to the feedwater's
         temperature; blowdown is made up cold.
+
+    Raises
+    ------
+    StudyError
+        If the feedwater would boil at the drum's pressure.
     """
     pressure_kPa = system.pressure_kPa_gauge + STANDARD_PRESSURE_kPa
     boiling_degC = saturation_degC(pressure_kPa)
+    if system.feedwater_degC >= boiling_degC:
+        must = (
+            f"must be below boiling, {boiling_degC:.1f} degC at "
+            f"{system.pressure_kPa_gauge:g} kPa gauge"
+        )
+        fault = Fault("heat.steam.feedwater_degC", f"{system.feedwater_degC:g}", must)
+        raise StudyError((fault,))
     steam = vapour_enthalpy_kJ_per_kg(pressure_kPa)
     feed = liquid_enthalpy_kJ_per_kg(system.feedwater_degC, pressure_kPa)
     returned = liquid_enthalpy_kJ_per_kg(system.condensate_degC)
@@ -88,6 +108,7 @@ def steam_state(system: SteamSystem) -> SteamState:
     x = (steam + (water - 1.0) * fresh - water * feed) / (steam - r * returned - (1.0 - r) * fresh)
     useful = steam - r * returned - (1.0 - r) * fresh
     return SteamState(
+        pressure_kPa=pressure_kPa,
         boiling_degC=boiling_degC,
         steam=steam,
         boiling=liquid_enthalpy_kJ_per_kg(boiling_degC, pressure_kPa),
@@ -149,7 +170,7 @@ class SteamRun:
 
 def design_steam_boiler(
     exhaust: GasFlow, system: SteamSystem, *, pinch_K: float, approach_K: float, loss_frac: float
-) -> SteamBoiler:
+) -> SteamBoiler | None:
     """Size a steam generator for one exhaust.
 
     Parameters
@@ -159,20 +180,31 @@ def design_steam_boiler(
     system : SteamSystem
         Water side.
     pinch_K, approach_K : float [K]
-        Gas above boiling behind the evaporator; water below boiling behind the economiser.
+        Gas above boiling behind the evaporator; water below boiling behind the economiser, and
+        never below the feedwater.
     loss_frac : float [-]
         Casing loss over heat given up.
 
     Returns
     -------
-    SteamBoiler
-        With the conductances that the design needs.
+    SteamBoiler or None
+        With the conductances that the design needs; None where the gas is hardly hotter than
+        boiling and pinch together.
+
+    Raises
+    ------
+    StudyError
+        If the feedwater would boil at the drum's pressure.
     """
     state = steam_state(system)
     boiling_K = state.boiling_degC + ZERO_CELSIUS_K
     pinch_gas_K = np.array([boiling_K + pinch_K])
+    if not exhaust.temperature_K[0] > pinch_gas_K[0] + LEAST_DROP_K:
+        return None
     evaporator_kW = exhaust.cooled_to_kW(pinch_gas_K) * (1.0 - loss_frac)
-    leaving = liquid_enthalpy_kJ_per_kg(state.boiling_degC - approach_K)
+    # With low-pressure steam the feedwater may stand within the approach: no economiser then.
+    leaving_degC = max(state.boiling_degC - approach_K, system.feedwater_degC)
+    leaving = liquid_enthalpy_kJ_per_kg(leaving_degC, state.pressure_kPa)
     steam = evaporator_kW / _evaporation(state, leaving)
     economiser_kW = steam * (1.0 + state.blowdown_frac) * (leaving - state.feed)
     behind = exhaust.at(pinch_gas_K)
@@ -187,7 +219,7 @@ def design_steam_boiler(
             evaporator_kW, exhaust.temperature_K - boiling_K, np.array([pinch_K])
         ),
         economiser_kW_per_K=conductance_kW_per_K(
-            economiser_kW, pinch_gas_K - (boiling_K - approach_K), stack_K - feed_K
+            economiser_kW, pinch_gas_K - ZERO_CELSIUS_K - leaving_degC, stack_K - feed_K
         ),
         design_flow_kg_per_s=float(exhaust.flow_kg_per_s[0]),
     )
@@ -211,6 +243,7 @@ def run_steam_boiler(boiler: SteamBoiler, exhaust: GasFlow) -> SteamRun:
     state, kept = boiler.state, 1.0 - boiler.loss_frac
     boiling_K = state.boiling_degC + ZERO_CELSIUS_K
     relative = (exhaust.flow_kg_per_s / boiler.design_flow_kg_per_s) ** FLOW_EXPONENT
+    usable = exhaust.temperature_K > boiling_K
     hot_K = np.maximum(exhaust.temperature_K, boiling_K + 1e-3)
     gas = exhaust.at(hot_K)
     after_K = np.full_like(hot_K, boiling_K) + 0.1 * (hot_K - boiling_K)
@@ -223,7 +256,13 @@ def run_steam_boiler(boiler: SteamBoiler, exhaust: GasFlow) -> SteamRun:
         if done:
             break
     evaporator_kW = gas.cooled_to_kW(after_K) * kept
-    return _with_economiser(boiler, exhaust.at(after_K), evaporator_kW, relative)
+    run = _with_economiser(boiler, exhaust.at(after_K), evaporator_kW, relative)
+    return SteamRun(
+        steam_kg_per_s=np.where(usable, run.steam_kg_per_s, 0.0),
+        after_evaporator_K=np.where(usable, run.after_evaporator_K, exhaust.temperature_K),
+        stack_K=np.where(usable, run.stack_K, exhaust.temperature_K),
+        steaming=run.steaming & usable,
+    )
 
 
 def _with_economiser(
@@ -232,10 +271,12 @@ def _with_economiser(
     """Steam and stack with the economiser's preheating, found together."""
     state, kept = boiler.state, 1.0 - boiler.loss_frac
     feed_K = boiler.feedwater_degC + ZERO_CELSIUS_K
-    hottest_K = state.boiling_degC + ZERO_CELSIUS_K - STEAMING_MARGIN_K
-    span = hottest_K - feed_K
-    heat_per_K = (liquid_enthalpy_kJ_per_kg(hottest_K - ZERO_CELSIUS_K) - state.feed) / span
-    water_K = np.full_like(evaporator_kW, hottest_K - boiler.approach_K)
+    # Feedwater that is as good as boiling goes past the economiser.
+    margin_K = state.boiling_degC + ZERO_CELSIUS_K - STEAMING_MARGIN_K
+    hottest_K = max(margin_K, feed_K + 1e-3)
+    hottest = liquid_enthalpy_kJ_per_kg(hottest_K - ZERO_CELSIUS_K, state.pressure_kPa)
+    heat_per_K = (hottest - state.feed) / (hottest_K - feed_K)
+    water_K = np.full_like(evaporator_kW, max(hottest_K - boiler.approach_K, feed_K))
     stack_K = behind.temperature_K - 30.0
     for _ in range(ITERATIONS):
         steam = evaporator_kW / _evaporation(state, state.feed + heat_per_K * (water_K - feed_K))

@@ -11,11 +11,13 @@ from dataclasses import dataclass
 import numpy as np
 from scipy.optimize import brentq
 
+from load_profiles import Fault
 from planner.arrays import FloatArray
 from planner.constants import ZERO_CELSIUS_K
+from planner.errors import StudyError
 from planner.plant.air import humid_air
 from planner.plant.combustion import BurnableFuel, burnable, burnt
-from planner.plant.fuel import GasFuel
+from planner.plant.fuel import AIR_MOLAR_MASS_kg_per_kmol, GasFuel
 from planner.plant.gas import Mixture
 from planner.study.sections import DataSheet
 
@@ -92,7 +94,7 @@ class GasTurbine:
         return self.sheet.power_kW / (self.fuel_kg_per_s * self.fuel.lhv_kJ_per_kg)
 
 
-def calibrate(sheet: DataSheet, fuel: GasFuel) -> GasTurbine:
+def calibrate(sheet: DataSheet, fuel: GasFuel, path: str = "unit.sheet") -> GasTurbine:
     """Find the machine behind a data sheet.
 
     Parameters
@@ -101,11 +103,19 @@ def calibrate(sheet: DataSheet, fuel: GasFuel) -> GasTurbine:
         At one stated condition, without site losses.
     fuel : GasFuel
         The site's gas; the sheet's efficiency is taken to hold for it.
+    path : str
+        Place of the sheet in the study file, for refusals.
 
     Returns
     -------
     GasTurbine
         It gives the sheet back at the sheet's condition.
+
+    Raises
+    ------
+    StudyError
+        If the exhaust is less than the fuel and the air to burn it, or if no compressor and turbine
+        could make the power.
 
     Notes
     -----
@@ -117,7 +127,7 @@ def calibrate(sheet: DataSheet, fuel: GasFuel) -> GasTurbine:
     basis = 1.0 if sheet.efficiency_basis == "LHV" else fuel.hhv_over_lhv
     fuel_lhv_kW = sheet.power_kW / (sheet.efficiency_frac * basis)
     fuel_kg_per_s = fuel_lhv_kW / burns.lhv_kJ_per_kg
-    air_kg_per_s = sheet.exhaust_flow_kg_per_s - fuel_kg_per_s
+    air_kg_per_s = _air_kg_per_s(sheet, fuel, fuel_kg_per_s, path)
     inlet_K = np.array([sheet.ambient_degC + ZERO_CELSIUS_K])
     air = humid_air(
         inlet_K, np.array([sheet.pressure_kPa]), np.array([sheet.relative_humidity_frac])
@@ -143,7 +153,7 @@ def calibrate(sheet: DataSheet, fuel: GasFuel) -> GasTurbine:
         inlet_K=inlet_K,
         exhaust_K=exhaust_K,
     )
-    efficiency = float(brentq(cycle.mismatch, *POLYTROPIC_RANGE, xtol=1e-13))
+    efficiency = _polytropic_efficiency(cycle, lost_kW / fuel_lhv_kW - usual_frac, path)
     compressed_K, firing_K = cycle.temperatures_K(efficiency)
     return GasTurbine(
         sheet=sheet,
@@ -163,6 +173,34 @@ def calibrate(sheet: DataSheet, fuel: GasFuel) -> GasTurbine:
         swallowing=cycle.swallowing(firing_K),
         ideal_expansion_kJ_per_kg=cycle.ideal_expansion_kJ_per_kg(firing_K),
     )
+
+
+def _air_kg_per_s(sheet: DataSheet, fuel: GasFuel, fuel_kg_per_s: float, path: str) -> float:
+    """Air into the machine; refuses an exhaust that is less than what has to be burnt."""
+    air_need = fuel.air_need_mol_per_mol * AIR_MOLAR_MASS_kg_per_kmol / fuel.molar_mass_kg_per_kmol
+    least_kg_per_s = fuel_kg_per_s * (1.0 + air_need)
+    if sheet.exhaust_flow_kg_per_s <= least_kg_per_s:
+        must = (
+            f"must be above {least_kg_per_s:.3g} kg/s, the fuel and the air to burn it; "
+            "is it stated in kg/s?"
+        )
+        came = f"{sheet.exhaust_flow_kg_per_s:g}"
+        raise StudyError((Fault(f"{path}.exhaust_flow_kg_per_s", came, must),))
+    return sheet.exhaust_flow_kg_per_s - fuel_kg_per_s
+
+
+def _polytropic_efficiency(cycle: "_Cycle", residual_frac: float, path: str) -> float:
+    """Of compressor and turbine alike; refuses a sheet that no real machine could have."""
+    low, high = POLYTROPIC_RANGE
+    if cycle.mismatch(low) * cycle.mismatch(high) > 0.0:
+        came = f"a first-law residual of {residual_frac:+.1%} of fuel (LHV)"
+        must = (
+            "power, efficiency, exhaust flow, exhaust temperature and pressure ratio cannot be "
+            f"true together: no compressor and turbine of {low:.0%} to {high:.0%} polytropic "
+            "efficiency make them; mend the sheet"
+        )
+        raise StudyError((Fault(path, came, must),))
+    return float(brentq(cycle.mismatch, low, high, xtol=1e-13))
 
 
 @dataclass(frozen=True)

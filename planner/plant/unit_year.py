@@ -8,6 +8,7 @@ import pandas as pd
 from load_profiles import SiteYear
 from planner.arrays import BoolArray, FloatArray
 from planner.constants import ZERO_CELSIUS_K
+from planner.plant.audit import refuse_impossible_sheet
 from planner.plant.exhaust_paths import SHARE_COLUMNS, HeatPaths, design_paths
 from planner.plant.fuel import GasFuel
 from planner.plant.gas_compressor import compression_kJ_per_kg
@@ -114,9 +115,17 @@ def unit_year(study: Study, option: Option, site_year: SiteYear, fuel: GasFuel) 
     -------
     UnitYear
         Exact model of every hour.
+
+    Raises
+    ------
+    StudyError
+        If the data sheet or the steam system cannot be true.
     """
     unit, hourly = option.unit, site_year.hourly
-    turbine = calibrate(unit.sheet, fuel)
+    number = [each.name for each in study.option].index(option.name) + 1
+    path = f"option[{number}].unit.sheet"
+    turbine = calibrate(unit.sheet, fuel, path)
+    refuse_impossible_sheet(turbine, fuel, path)
     pressure_kPa = hourly["pressure_kPa"].to_numpy(dtype=np.float64)
     hours = ambient(
         hourly["ambient_degC"].to_numpy(dtype=np.float64),
