@@ -6,6 +6,8 @@ from dataclasses import dataclass
 import numpy as np
 
 from planner.arrays import FloatArray
+from planner.constants import ZERO_CELSIUS_K
+from planner.errors import SolveError
 from planner.plant.running import Ambient, RunningPoint, run
 from planner.plant.turbine import GasTurbine
 
@@ -14,6 +16,9 @@ CLOSED_VANE_FRAC = 0.72
 
 #: Powers are met to this share of the sheet's power.
 POWER_TOLERANCE = 1e-9
+
+#: A miss above this is an error: the search has failed.
+MISSED_FRAC = 1e-6
 ITERATIONS = 40
 
 #: Firing temperatures between which loads are looked for [K].
@@ -65,15 +70,21 @@ class NetMachine:
         -------
         RunningPoint
             Firing or exhaust temperature held, with the generator's cap in the cold.
+
+        Raises
+        ------
+        SolveError
+            If no firing temperature holds the cap.
         """
         point = self._uncapped()
         over = point.terminal_power_kW > self.terminal_limit_kW
         if not over.any():
             return point
         wanted_kW = np.minimum(point.terminal_power_kW, self.terminal_limit_kW)
-        return self._fire(
+        capped = self._fire(
             lambda p: p.terminal_power_kW - wanted_kW, np.ones(len(wanted_kW)), point.firing_K
         )
+        return self._met(capped, capped.terminal_power_kW - wanted_kW)
 
     def _uncapped(self) -> RunningPoint:
         """Full load without the generator's cap."""
@@ -98,7 +109,30 @@ class NetMachine:
         RunningPoint
             By the sheet's control law: fuel alone, or guide vanes first, which hold the exhaust's
             temperature until they are closed.
+
+        Raises
+        ------
+        SolveError
+            If the machine has no such power in some hour; never a point that misses it.
         """
+        point = self._at_net_power(net_kW, full)
+        return self._met(point, self.net_kW(point) - net_kW)
+
+    def _met(self, point: RunningPoint, miss_kW: FloatArray) -> RunningPoint:
+        """The point, if it misses no power."""
+        missed = ~(np.abs(miss_kW) <= MISSED_FRAC * self.turbine.sheet.power_kW)  # NaN is missed
+        if missed.any():
+            first = int(np.flatnonzero(missed)[0])
+            at_degC = self.hours.temperature_K[first] - ZERO_CELSIUS_K
+            raise SolveError(
+                f"the turbine of {self.turbine.sheet.power_kW:,.0f} kW does not reach the power "
+                f"asked of it in {missed.sum():,} of {len(missed):,} steps, first in step {first} "
+                f"at {at_degC:.1f} degC; check the sheet's minimum load and the auxiliaries"
+            )
+        return point
+
+    def _at_net_power(self, net_kW: FloatArray, full: RunningPoint) -> RunningPoint:
+        """The point at a power by the sheet's control law, met or not."""
         open_vanes = np.ones(len(net_kW))
         if self.turbine.sheet.control == "fuel_only":
             return self._fire(lambda p: self.net_kW(p) - net_kW, open_vanes, full.firing_K)
@@ -122,10 +156,14 @@ class NetMachine:
         turbine, hours = self.turbine, self.hours
         firing_K, vanes = full.firing_K, np.sqrt(np.clip(net_kW / self.net_kW(full), 0.3, 1.0))
         point = run(turbine, hours, firing_K, vanes)
+        closed = np.zeros(len(vanes), dtype=bool)
         for _ in range(ITERATIONS):
             power_miss, exhaust_miss = self.net_kW(point) - net_kW, point.exhaust_K - full.exhaust_K
-            worst = max(np.abs(power_miss).max(), np.abs(exhaust_miss).max())
-            if worst <= POWER_TOLERANCE * turbine.sheet.power_kW:
+            # Hours that stay at the search's limit are left to fuel alone.
+            closed, was_closed = vanes <= LEAST_VANE_FRAC, closed
+            worst = np.maximum(np.abs(power_miss), np.abs(exhaust_miss))
+            done = worst <= POWER_TOLERANCE * turbine.sheet.power_kW
+            if (done | (closed & was_closed)).all():
                 break
             hotter = run(turbine, hours, firing_K + FIRING_STEP_K, vanes, near=point)
             wider = run(turbine, hours, firing_K, vanes + VANE_STEP, near=point)
@@ -135,6 +173,7 @@ class NetMachine:
             d = (wider.exhaust_K - point.exhaust_K) / VANE_STEP
             determinant = a * d - b * c
             firing_K = firing_K - (d * power_miss - b * exhaust_miss) / determinant
+            firing_K = np.clip(firing_K, COLDEST_FIRING_K, HOTTEST_OVER_DESIGN * turbine.firing_K)
             vanes = vanes - (a * exhaust_miss - c * power_miss) / determinant
             vanes = np.clip(vanes, LEAST_VANE_FRAC, 1.0)
             point = run(turbine, hours, firing_K, vanes, near=point)

@@ -27,6 +27,11 @@ SPEED_LOSS = 0.3
 ITERATIONS = 60
 TOLERANCE = 1e-11
 
+#: Of the match's logarithm over that of the pressure ratio: minus one, and what the speed line,
+#: the fuel and the ellipse add.
+SLOPES = (-2.0, -0.5)
+LEAST_TELLING_STEP = 1e-8
+
 
 @dataclass(frozen=True)
 class Ambient:
@@ -154,10 +159,17 @@ def run(
         log_ratio = np.log(near.pressure_ratio)
     matched = _Match(turbine, hours, firing_K, vane_frac, speed)
     compressed_K: FloatArray | float = turbine.compressed_K if near is None else near.compressed_K
+    slope: FloatArray | float = -(1.0 + SPEED_LINE_SLOPE)
+    step, before = np.zeros_like(log_ratio), np.zeros_like(log_ratio)
     for _ in range(ITERATIONS):
         compressed_K = matched.compressed_K(log_ratio, compressed_K)
         miss = matched.miss(log_ratio, compressed_K)
-        log_ratio = log_ratio + miss / (1.0 + SPEED_LINE_SLOPE)
+        # Steps that are all rounding tell nothing about the slope.
+        telling = np.abs(step) > LEAST_TELLING_STEP
+        found = np.divide(miss - before, step, out=np.zeros_like(step), where=telling)
+        slope = np.where(telling, np.clip(found, *SLOPES), slope)
+        step, before = -miss / slope, miss
+        log_ratio = log_ratio + step
         if np.abs(miss).max() < TOLERANCE:
             break
     return matched.point(log_ratio, matched.compressed_K(log_ratio, compressed_K))

@@ -5,7 +5,7 @@ from typing import Any
 import numpy as np
 import pytest
 
-from planner.errors import StudyError
+from planner.errors import SolveError, StudyError
 from planner.plant.audit import refuse_impossible_sheet
 from planner.plant.fuel import GasFuel
 from planner.plant.load import NetMachine
@@ -205,6 +205,16 @@ def test_guide_vanes_hold_the_exhaust_until_they_are_closed() -> None:
     np.testing.assert_allclose(flow_frac[~held], flow_frac[~held].mean(), rtol=0.02)
     assert (np.diff(colder_K[~held]) < 0.0).all()
     assert (np.diff(point.fuel_kg_per_s) > 0.0).all()
+
+
+def test_power_that_cannot_be_is_refused() -> None:
+    """Twice full load is an error that names the step and its ambient, never a point below it."""
+    machine = _machine(calibrate(_sheet(), GAS), _hours(np.array([15.0, 30.0])))
+    full = machine.full_load()
+    asked_kW = full.terminal_power_kW * np.array([1.0, 2.0])
+
+    with pytest.raises(SolveError, match=r"in 1 of 2 steps, first in step 1 at 30\.0 degC"):
+        machine.at_net_power(asked_kW, full)
 
 
 def test_more_fuel_is_more_power() -> None:
