@@ -1,5 +1,6 @@
 """Where evaluations run: in this process, or spread over processes that keep study and year."""
 
+import warnings
 from collections.abc import Callable, Iterator, Sequence
 from concurrent.futures import as_completed
 from types import TracebackType
@@ -30,6 +31,7 @@ class Workers:
     """
 
     def __init__(self, study: Study, site_year: SiteYear, processes: int) -> None:
+        self._filters = warnings.catch_warnings()
         self._study = study
         self._site_year = site_year
         # loky starts processes without running the user's script again, so that the five lines
@@ -73,6 +75,9 @@ class Workers:
             yield futures[future], future.result()
 
     def __enter__(self) -> Self:
+        # loky starts a worker anew when it has grown, and says so; nothing is lost by it.
+        self._filters.__enter__()
+        warnings.filterwarnings("ignore", message="A worker stopped while some jobs")
         return self
 
     def __exit__(
@@ -83,6 +88,7 @@ class Workers:
     ) -> None:
         if self._pool is not None:
             self._pool.shutdown(wait=error is None, kill_workers=error is not None)
+        self._filters.__exit__(kind, error, trace)
 
 
 def _keep(study: Study, site_year: SiteYear) -> None:

@@ -50,7 +50,13 @@ def faults_from_validation(error: ValidationError, document: dict[str, Any]) -> 
     tuple of Fault
         In the order of the file's sections.
     """
-    return tuple(_fault(detail, document) for detail in error.errors(include_url=False))
+    details = error.errors(include_url=False)
+    # A list whose only entry is at fault is also called too short; that is not what came.
+    return tuple(
+        _fault(detail, document)
+        for detail in details
+        if not (detail["type"] == "too_short" and detail["input"])
+    )
 
 
 def _fault(detail: ErrorDetails, document: dict[str, Any]) -> Fault:

@@ -430,7 +430,9 @@ class EmissionRules(Section):
         "eu_high_efficiency", description="Legal test of overall efficiency."
     )
     reference_power_efficiency_lhv_frac: Efficiency = Field(
-        0.53, description="Reference for separate power in the primary-energy saving (LHV)."
+        0.53,
+        description="Reference for separate power in the primary-energy saving (LHV), with "
+        "grid losses of the connection and climate already taken in.",
     )
     reference_steam_efficiency_lhv_frac: Efficiency = Field(
         0.87, description="Reference for separate steam (LHV)."

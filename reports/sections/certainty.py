@@ -59,7 +59,9 @@ def _curve(results: ResultsFolder, figures: Figures) -> Figure | None:
     ordered = sorted(points.items())
     return figures.add(
         draw_price_curve(ordered, zero_frac=zero, currency=results.currency),
-        title="Gas is the price that decides" if zero is not None else "No gas price tried decides",
+        title=f"NPV is zero with gas {signed_percent(zero)}"
+        if zero is not None
+        else "NPV keeps its sign at every gas price tried",
         see="What to see: each dot is a year dispatched anew at that price, CHP and boilers alike. "
         "Transport, levies and carbon stay.",
         alt="; ".join(

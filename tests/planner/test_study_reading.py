@@ -1,5 +1,6 @@
 """Study files: read strictly, every fault at once, each with its path."""
 
+import re
 import tomllib
 from pathlib import Path
 from typing import Any
@@ -119,3 +120,16 @@ def test_defaults_are_told(tmp_path: Path) -> None:
     listed = {default.path: default.value for default in defaults_used(source.study)}
     assert "money.discount_rate_real_frac" not in listed
     assert listed["sensitivity.fuel_price_steps_frac"] == "-0.3, -0.2, -0.1, 0.1, 0.2, 0.3"
+
+
+def test_fault_inside_an_option_is_told_alone(tmp_path: Path) -> None:
+    """A fault inside the only option does not also call the list of options too short."""
+    text = HOSPITAL.read_text(encoding="utf-8")
+    first, second = (match.start() for match in re.finditer(r"(?m)^\[\[option\]\]", text))
+    end = text.index("# --- Money over the years")
+    one_option = text[:second] + text[end:]
+    assert first < second
+    study = tmp_path / "study.toml"
+    study.write_text(one_option.replace("pinch_K = 10", "pinch_K = 1", 1), encoding="utf-8")
+
+    assert _faults(study) == "option[1].recovery.pinch_K = 1: must be at least 4.0"
